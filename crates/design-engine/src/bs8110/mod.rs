@@ -1,0 +1,3 @@
+//! The clauses of BS 8110-1:1997 used, one file per group.
+
+pub mod coefficients;
