@@ -1,3 +1,13 @@
 //! The clauses of BS 8110-1:1997 used, one file per group.
 
+pub mod anchorage;
 pub mod coefficients;
+pub mod cover;
+pub mod curtailment;
+pub mod deflection;
+pub mod flexure;
+pub mod loads;
+pub mod one_way;
+pub mod shear;
+pub mod spacing;
+pub mod tables;

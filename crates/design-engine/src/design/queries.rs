@@ -1,0 +1,254 @@
+//! What a finished design has to say: queries and printed assumptions.
+
+use crate::check::Place;
+use crate::criteria::{Coefficients, Criteria, EdgeStrips};
+use crate::floor::{Corners, EdgeState, Floor, PanelId, Side, Span, Support, SupportKind};
+use crate::query::{Query, Severity, Subject};
+use crate::result::{Action, PanelDesign, SupportDesign};
+
+/// Ratios of neighbours' loads or spans outside this and its inverse are a warning (decision).
+const LEAST_NEIGHBOUR_RATIO: f64 = 0.5;
+/// "Approximately the same" (3.5.3.5) for the summary note (decision).
+const SIMILAR_NEIGHBOUR_RATIO: f64 = 0.8;
+/// A new support moment above this multiple of a panel's table value is a warning (decision).
+const GREATEST_RISE: f64 = 1.5;
+
+/// All queries of the design, panels first in floor order, then supports.
+pub(crate) fn of_design(
+    floor: &Floor,
+    criteria: &Criteria,
+    panels: &[PanelDesign],
+    supports: &[SupportDesign],
+) -> Vec<Query> {
+    let mut queries = Vec::new();
+    for design in panels {
+        of_panel(floor, design, &mut queries);
+    }
+    for design in supports {
+        of_support(floor, panels, design, &mut queries);
+    }
+    similar_neighbours(supports, &mut queries);
+    settings_not_applied(criteria, &mut queries);
+    queries
+}
+
+fn of_panel(floor: &Floor, design: &PanelDesign, queries: &mut Vec<Query>) {
+    let panel = floor.panel(design.panel);
+    let mut say = |severity, text: String, remedy: &str| {
+        queries.push(Query::panel(severity, &panel.mark, None, text, remedy));
+    };
+    let mut failed: Vec<&str> = design.checks.iter().filter(|c| !c.ok).map(|c| c.kind.word()).collect();
+    failed.dedup();
+    failed.sort_unstable();
+    failed.dedup();
+    if !failed.is_empty() {
+        let least = design.least_thickness_mm.map_or(String::new(), |h| {
+            format!("; the least thickness that passes bending, shear, deflection and bond is {h} mm")
+        });
+        say(
+            Severity::Warning,
+            format!("fails {}{least}", failed.join(", ")),
+            "see its rows on the Checks sheet; change the thickness, the bars allowed or the loads",
+        );
+    }
+    let Some(basis) = design.basis else { return };
+    for (span, length) in [(Span::Short, basis.lx_m), (Span::Long, basis.ly_m)] {
+        if length > 10.0 && (span == basis.main_span || basis.case.is_some()) {
+            let text = format!(
+                "{} span {length:.2} m: over 10 m the span/depth check does not protect finishes",
+                span.word()
+            );
+            say(Severity::Note, text, "check deflection after finishes by other means (3.4.6.4)");
+        }
+    }
+    let ratio = basis.span_ratio();
+    if basis.action == Action::OneWay && basis.main_span == Span::Short && (2.0..=2.2).contains(&ratio) {
+        let text =
+            format!("ly/lx = {ratio:.2}, just over 2: designed one-way; some load still goes the long way");
+        say(Severity::Note, text, "");
+    }
+    for span in [Span::Short, Span::Long] {
+        let at = if span == Span::Short { Place::ShortMidspan } else { Place::LongMidspan };
+        let hogs =
+            design.sections.iter().any(|s| s.at == at && s.moment_balanced_knm_m.is_some_and(|m| m < 0.0));
+        if hogs {
+            let text = format!(
+                "the {} span hogs throughout after balancing: top bars of both its supports run through",
+                span.word()
+            );
+            say(
+                Severity::Warning,
+                text,
+                "the neighbours are too unlike for the coefficient method to be relied on (3.5.3.5)",
+            );
+        }
+    }
+}
+
+fn of_support(floor: &Floor, panels: &[PanelDesign], design: &SupportDesign, queries: &mut Vec<Query>) {
+    let support = floor.support(design.support);
+    let name = support_words(floor, support);
+    let subject = support.name.clone().map_or_else(
+        || Subject::Edge { mark: floor.panel(support.near.panel).mark.clone(), side: support.near.side },
+        Subject::Support,
+    );
+    let mut warn = |text: String, remedy: &str| {
+        queries.push(Query::new(Severity::Warning, subject.clone(), text, remedy));
+    };
+    if let Some(side) = support.sides().find(|side| panels[side.panel.0].not_designed.is_some()) {
+        if support.kind == SupportKind::Hogging && support.far.is_some() {
+            let mark = &floor.panel(side.panel).mark;
+            warn(
+                format!(
+                    "{name}: {mark} is not designed, so this support is not balanced: its bars come from the other panel alone"
+                ),
+                "design the support again with both panels",
+            );
+        }
+        return;
+    }
+    if support.kind == SupportKind::Crossing {
+        return;
+    }
+    for (what, ratio) in [("ultimate loads", design.load_ratio), ("spans", design.span_ratio)] {
+        if let Some(ratio) = ratio.filter(|ratio| *ratio < LEAST_NEIGHBOUR_RATIO) {
+            warn(
+                format!(
+                    "{name}: the {what} of its two panels are in the ratio {ratio:.2}, under 0.5: not approximately the same (3.5.3.5)"
+                ),
+                "check these panels by analysis",
+            );
+        }
+    }
+    if let Some(moment) = design.moment_knm_m {
+        for side in &design.sides {
+            let table = side.moment_from_coefficient_knm_m.unwrap_or(0.0);
+            if moment > GREATEST_RISE * table && table > 0.0 {
+                let mark = &floor.panel(side.panel).mark;
+                warn(
+                    format!(
+                        "{name}: the new moment {moment:.1} kNm/m is over 1.5 times the {table:.1} of {mark}"
+                    ),
+                    "check these panels by analysis",
+                );
+            }
+        }
+    }
+}
+
+/// A support's name, or its panel's edge.
+fn support_words(floor: &Floor, support: &Support) -> String {
+    support.name.as_ref().map_or_else(
+        || {
+            let panel = floor.panel(support.near.panel);
+            format!("{} {} edge", panel.mark, panel.side_word(support.near.side))
+        },
+        |name| format!("support {name}"),
+    )
+}
+
+fn similar_neighbours(supports: &[SupportDesign], queries: &mut Vec<Query>) {
+    let shared =
+        supports.iter().filter(|support| support.load_ratio.is_some() && support.moment_knm_m.is_some());
+    let unlike = shared
+        .clone()
+        .filter(|support| {
+            let under = |ratio: Option<f64>| ratio.is_some_and(|r| r < SIMILAR_NEIGHBOUR_RATIO);
+            under(support.load_ratio) || under(support.span_ratio)
+        })
+        .count();
+    if unlike > 0 {
+        let text = format!(
+            "at {unlike} of {} shared supports the loads or spans of the two panels differ by more than 20 %; 3.5.3.5 asks that they be approximately the same",
+            shared.count()
+        );
+        queries.push(Query::new(
+            Severity::Note,
+            Subject::Floor,
+            text,
+            "see the ratios on the Supports sheet",
+        ));
+    }
+}
+
+/// Settings that are read but not applied by this version are said, never passed over.
+fn settings_not_applied(criteria: &Criteria, queries: &mut Vec<Query>) {
+    let mut say = |item, text: &str, remedy: &str| {
+        queries.push(Query::new(Severity::Warning, Subject::Setting(item), text, remedy));
+    };
+    if criteria.edge_strips == EdgeStrips::MinimumSteel {
+        say(
+            "Edge strips",
+            "minimum steel in the edge strips is not applied: the middle-strip bars are given over the full width",
+            "more steel than asked; nothing to do",
+        );
+    }
+    if criteria.bar_kinds_limit.is_some() {
+        say(
+            "Bar kinds limit",
+            "the limit on kinds of bars is not applied",
+            "limit Bar sizes and the spacing step instead",
+        );
+    }
+}
+
+/// Assumptions of this floor's design, for printing.
+pub(crate) fn assumptions(floor: &Floor, criteria: &Criteria, panels: &[PanelDesign]) -> Vec<String> {
+    let mut list = Vec::new();
+    let any = |test: &dyn Fn(&PanelDesign) -> bool| panels.iter().any(test);
+    list.push(match criteria.coefficients {
+        Coefficients::Tabulated => "Two-way moments from Tables 3.13 and 3.14, linear interpolation between printed ratios, coefficients not rounded.".to_owned(),
+        Coefficients::Equations => "Two-way moments from equations 12 to 18; shears from Table 3.15.".to_owned(),
+    });
+    list.push("The midspan moment for bottom steel and deflection is never below the table's: a neighbour may be unloaded.".to_owned());
+    list.push("Bottom bars of a panel's middle strip are given over its full width.".to_owned());
+    let restrained = |d: &PanelDesign| d.basis.is_some_and(|b| b.action == Action::TwoWayRestrained);
+    if any(&restrained) {
+        list.push("Corners of restrained two-way panels are held down; torsion steel at corners (3.5.3.5) is to be added to the bars listed here.".to_owned());
+    }
+    if criteria.corners == Corners::FreeToLift && any(&restrained) {
+        list.push("Corners free to lift applies only to panels discontinuous on all four edges; the others are designed with corners held down.".to_owned());
+    }
+    if any(&|d| d.basis.is_some_and(|b| b.action == Action::OneWay)) {
+        list.push("One-way panels: simply supported, or Table 3.12 where its conditions hold (spans and loads within 15 %, one thickness, the panel's own area taken as the bay).".to_owned());
+    }
+    let stated: Vec<String> = floor
+        .panels
+        .iter()
+        .enumerate()
+        .filter(|(index, panel)| panels[*index].not_designed.is_none() && !panel.is_loose())
+        .flat_map(|(index, panel)| {
+            let own = |side: &Side| {
+                let edge = panel.edge(*side);
+                edge.stated
+                    && edge.state == EdgeState::Continuous
+                    && shared_with_none(floor, PanelId(index), *side)
+            };
+            Side::ALL
+                .into_iter()
+                .filter(own)
+                .map(|side| format!("{} {}", panel.mark, side.word()))
+                .collect::<Vec<_>>()
+        })
+        .collect();
+    if !stated.is_empty() {
+        list.push(format!(
+            "Edges stated continuous with nothing to balance against keep their coefficient moment: {}.",
+            stated.join(", ")
+        ));
+    }
+    if panels.iter().any(|d| d.basis.is_some() && floor.panel(d.panel).is_loose()) {
+        list.push("Loose panels are designed alone: no balancing at their continuous edges.".to_owned());
+    }
+    list
+}
+
+fn shared_with_none(floor: &Floor, id: PanelId, side: Side) -> bool {
+    floor
+        .panel(id)
+        .edge(side)
+        .segments
+        .iter()
+        .filter_map(|s| s.support)
+        .all(|s| floor.support(s).far.is_none())
+}

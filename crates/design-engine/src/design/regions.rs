@@ -1,0 +1,67 @@
+//! Connected regions of top bars and the direction of their outer layer.
+
+use super::balance::SupportMoment;
+use super::fixed::Fixed;
+use crate::criteria::{Criteria, Layering};
+use crate::floor::{Axis, Floor, PanelId};
+
+/// The axis of the top outer bars (T1) around each panel: one direction over each region connected by
+/// supports. By `Layering` where it names an axis; else the direction with the greater sum of support moment
+/// x length; on a tie the direction of most short spans, then of the panel's own short span.
+pub(crate) fn t1_axes(
+    floor: &Floor,
+    criteria: &Criteria,
+    fixed: &[Option<Fixed>],
+    moments: &[Option<SupportMoment>],
+    most_short_spans: Option<Axis>,
+) -> Vec<Axis> {
+    let mut roots = Roots::new(floor.panels.len());
+    for support in &floor.supports {
+        if let Some(far) = support.far {
+            roots.join(support.near.panel.0, far.panel.0);
+        }
+    }
+    let mut sums = vec![[0.0_f64; 2]; floor.panels.len()];
+    for (support, moment) in floor.supports.iter().zip(moments) {
+        if let Some(moment) = moment.and_then(|m| m.moment_knm_m) {
+            let region = roots.find(support.near.panel.0);
+            sums[region][support.axis as usize] += moment * support.length_m();
+        }
+    }
+    (0..floor.panels.len())
+        .map(|index| {
+            let panel = floor.panel(PanelId(index));
+            if let (Layering::Outer(axis), false) = (criteria.layering, panel.is_loose()) {
+                return axis;
+            }
+            let [x, y] = sums[roots.find(index)];
+            if (x - y).abs() > 1e-9 * x.max(y) {
+                return if x > y { Axis::X } else { Axis::Y };
+            }
+            let own = || fixed[index].map_or(Axis::X, |f| f.basis.axis_of(f.basis.main_span));
+            if panel.is_loose() { own() } else { most_short_spans.unwrap_or_else(own) }
+        })
+        .collect()
+}
+
+/// Disjoint sets of panels.
+struct Roots(Vec<usize>);
+
+impl Roots {
+    fn new(count: usize) -> Roots {
+        Roots((0..count).collect())
+    }
+
+    fn find(&mut self, mut index: usize) -> usize {
+        while self.0[index] != index {
+            self.0[index] = self.0[self.0[index]];
+            index = self.0[index];
+        }
+        index
+    }
+
+    fn join(&mut self, a: usize, b: usize) {
+        let (a, b) = (self.find(a), self.find(b));
+        self.0[a.max(b)] = a.min(b);
+    }
+}

@@ -1,0 +1,266 @@
+//! Top bars over a support: one choice that serves both panels.
+
+use super::balance::{SupportMoment, balanced_midspans, new_side_moments};
+use super::bottom::shear_check;
+use super::fixed::Fixed;
+use super::section::{Trial, worst_ratio};
+use super::view::View;
+use crate::bs8110::curtailment::{contraflexure, round_up_50, top_extents};
+use crate::check::{Check, Place};
+use crate::choose::{Score, best, cost};
+use crate::criteria::TopBars;
+use crate::floor::{BarChoice, Layer, Support, SupportId, SupportKind, SupportSide};
+use crate::result::{Action, SupportDesign, SupportSideDesign};
+
+/// A new moment this much above the table's lengthens the top bars (3.5.3.6 e; decision: 10 %).
+const RISE_THAT_LENGTHENS: f64 = 1.10;
+/// Spans within this of each other allow alternate reversed bars.
+const REVERSED_SPAN_VARIATION: f64 = 0.15;
+
+/// One side of a support being designed.
+#[derive(Clone, Copy)]
+struct SideTask<'a> {
+    at: SupportSide,
+    fixed: &'a Fixed,
+    /// Span across the support, m.
+    l_m: f64,
+    /// Moments of the panel's span after balancing: at this support, at the far end, midspan.
+    near_knm_m: f64,
+    far_knm_m: f64,
+    midspan_after_knm_m: f64,
+    clear_span_mm: f64,
+}
+
+/// A support whose top bars are wanted.
+pub(crate) struct TopTask<'a> {
+    view: View<'a>,
+    id: SupportId,
+    support: &'a Support,
+    moment: SupportMoment,
+    sides: Vec<SideTask<'a>>,
+    layer: Layer,
+    /// Size of the largest T1 bar that crosses the panels, for a T2 support, mm.
+    outer_mm: f64,
+    /// Steel that crossing bars must have, mm2/m.
+    crossing_steel_mm2_m: f64,
+    candidates: &'a [BarChoice],
+}
+
+/// Reach of top bars past the face on one side, mm.
+#[derive(Clone, Copy)]
+struct Reach {
+    long: f64,
+    short: f64,
+    from_contraflexure: bool,
+}
+
+impl<'a> TopTask<'a> {
+    /// A support with at least one designed side; `moments` gives the moment of any support.
+    pub(crate) fn new(
+        view: View<'a>,
+        id: SupportId,
+        layer: Layer,
+        outer_mm: f64,
+        crossing_steel_mm2_m: f64,
+        candidates: &'a [BarChoice],
+        moments: &dyn Fn(SupportId) -> Option<SupportMoment>,
+    ) -> Option<TopTask<'a>> {
+        let support = view.floor.support(id);
+        let moment = moments(id)?;
+        let sides = support
+            .sides()
+            .filter_map(|at| Some(side_task(&view, at, view.fixed(at.panel)?, moment, moments)))
+            .collect();
+        Some(TopTask { view, id, support, moment, sides, layer, outer_mm, crossing_steel_mm2_m, candidates })
+    }
+
+    /// Effective depth, mm: bars level below the lower top, the lesser of the two sides governs.
+    fn depth(&self, bar_mm: f64) -> f64 {
+        let panels = || self.sides.iter().map(|side| (self.view.floor.panel(side.at.panel), side.fixed));
+        let lower_top = panels().map(|(p, _)| p.top_level_mm).fold(f64::INFINITY, f64::min);
+        let level = lower_top - self.view.criteria.top_cover_mm - self.outer_mm - bar_mm / 2.0;
+        panels()
+            .map(|(panel, fixed)| level - (panel.top_level_mm - fixed.thickness_mm))
+            .fold(f64::INFINITY, f64::min)
+            .max(1.0)
+    }
+
+    /// The section at a place with these bars.
+    pub(crate) fn trial(&self, at: Place, bars: BarChoice) -> Trial {
+        let criteria = self.view.criteria;
+        let greatest = |value: fn(&SideTask<'_>) -> f64| self.sides.iter().map(value).fold(0.0, f64::max);
+        let least =
+            |value: fn(&SideTask<'_>) -> f64| self.sides.iter().map(value).fold(f64::INFINITY, f64::min);
+        let moment =
+            (self.support.kind == SupportKind::Hogging).then_some(self.moment.moment_knm_m).flatten();
+        Trial {
+            at,
+            bars,
+            stated: self.support.chosen.is_some(),
+            moment_knm_m: moment,
+            floor_steel_mm2_m: self.crossing_steel_mm2_m,
+            d_mm: self.depth(bars.bar_mm),
+            h_mm: greatest(|side| side.fixed.thickness_mm),
+            cover_to_bars_mm: criteria.top_cover_mm + self.outer_mm,
+            nominal_cover_mm: criteria.top_cover_mm,
+            k_limit: least(|side| side.fixed.support_k_limit),
+            beta_b: least(|side| side.fixed.support_beta_b),
+        }
+    }
+
+    /// Checks of these bars seen from one side.
+    fn side_checks(&self, side: &SideTask<'_>, bars: BarChoice, give: &mut dyn FnMut(Check)) {
+        let place = Place::Side(side.at.side);
+        let trial = self.trial(place, bars);
+        trial.checks(self.view.criteria, give);
+        let shear = side.fixed.side_shear_kn_m[side.at.side.index()];
+        if let (Some(v), SupportKind::Hogging) = (shear, self.support.kind) {
+            give(shear_check(self.view.criteria, place, v, trial.as_provided(), trial.d_mm));
+        }
+    }
+
+    /// Reach past the face into each panel, and whether alternate bars are reversed.
+    fn reaches(&self, bars: BarChoice) -> (Vec<Reach>, bool) {
+        let trial = self.trial(Place::Panel, bars);
+        let l_mm = self.sides.iter().map(|side| side.l_m).fold(0.0, f64::max) * 1000.0;
+        let simplified = top_extents(l_mm, bars.bar_mm);
+        let mut reaches: Vec<Reach> =
+            self.sides.iter().map(|side| self.reach(side, &trial, simplified)).collect();
+        let least_l = self.sides.iter().map(|side| side.l_m).fold(f64::INFINITY, f64::min) * 1000.0;
+        let reversed = self.view.criteria.top_bars == TopBars::AlternateReversed
+            && self.sides.len() == 2
+            && (l_mm - least_l) / l_mm <= REVERSED_SPAN_VARIATION + 1e-9
+            && reaches.iter().all(|reach| !reach.from_contraflexure)
+            && trial.alternate_bars_may_stop(self.view.criteria);
+        if !reversed {
+            for reach in &mut reaches {
+                reach.short = reach.long;
+            }
+        }
+        (reaches, reversed)
+    }
+
+    fn reach(&self, side: &SideTask<'_>, trial: &Trial, simplified: (f64, f64)) -> Reach {
+        let fixed = side.fixed;
+        let plain = Reach {
+            long: round_up_50(simplified.1),
+            short: round_up_50(simplified.0),
+            from_contraflexure: false,
+        };
+        let run_through = Reach { long: round_up_50(side.clear_span_mm), from_contraflexure: true, ..plain };
+        if self.support.kind == SupportKind::Crossing || fixed.basis.action == Action::OneWay {
+            return plain;
+        }
+        if side.midspan_after_knm_m < 0.0 {
+            return run_through;
+        }
+        let table = fixed.side(side.at.side);
+        if side.near_knm_m <= RISE_THAT_LENGTHENS * table * (1.0 + 1e-9) {
+            return plain;
+        }
+        let span = fixed.basis.span_along(side.at.side.span_axis());
+        let free = fixed.midspan(span) + (table + fixed.side(side.at.side.opposite())) / 2.0;
+        let Some(x0) = contraflexure(free, side.near_knm_m, side.far_knm_m, side.l_m * 1000.0) else {
+            return run_through;
+        };
+        let past = x0 + trial.d_mm.max(12.0 * trial.bars.bar_mm);
+        let to_face = self.support.width_mm / 2.0;
+        Reach {
+            long: round_up_50(simplified.1.max(past - to_face)).min(run_through.long),
+            short: round_up_50(simplified.0.max(past / 2.0 - to_face)).min(run_through.long),
+            from_contraflexure: true,
+        }
+    }
+
+    fn score(&self, bars: BarChoice) -> Score {
+        let worst = worst_ratio(|give| {
+            for side in &self.sides {
+                self.side_checks(side, bars, give);
+            }
+        });
+        let (reaches, _) = self.reaches(bars);
+        let reach: f64 = reaches.iter().map(|reach| (reach.long + reach.short) / 2.0).sum();
+        let length = (reach + self.support.width_mm) / 1000.0;
+        let area = self.trial(Place::Panel, bars).as_provided();
+        Score { worst_ratio: worst, cost_kg: cost(area, length, self.support.length_m()) }
+    }
+
+    /// The bars and everything said of the support.
+    pub(crate) fn choose(&self) -> Option<SupportDesign> {
+        let choices: &[BarChoice] =
+            self.support.chosen.as_ref().map_or(self.candidates, std::slice::from_ref);
+        let (bars, _) = best(choices.iter().map(|bars| (*bars, self.score(*bars))))?;
+        let criteria = self.view.criteria;
+        let trial = self.trial(Place::Panel, bars);
+        let flexure = trial.flexure(criteria);
+        let (reaches, alternate_reversed) = self.reaches(bars);
+        Some(SupportDesign {
+            support: self.id,
+            sides: self
+                .sides
+                .iter()
+                .zip(&reaches)
+                .map(|(side, reach)| self.side_design(side, reach))
+                .collect(),
+            balanced: self.moment.balanced,
+            moment_knm_m: self.moment.moment_knm_m,
+            difference_pct: self.moment.difference_pct,
+            load_ratio: self.moment.load_ratio,
+            span_ratio: self.moment.span_ratio,
+            layer: self.layer,
+            d_mm: trial.d_mm,
+            as_bending_mm2_m: flexure.and_then(|f| f.as_mm2_m),
+            as_required_mm2_m: trial.as_required(criteria),
+            bars,
+            as_provided_mm2_m: trial.as_provided(),
+            alternate_reversed,
+            stated: self.support.chosen.is_some(),
+        })
+    }
+
+    fn side_design(&self, side: &SideTask<'_>, reach: &Reach) -> SupportSideDesign {
+        let fixed = side.fixed;
+        let span = fixed.basis.span_along(side.at.side.span_axis());
+        SupportSideDesign {
+            panel: side.at.panel,
+            moment_from_coefficient_knm_m: (self.support.kind == SupportKind::Hogging)
+                .then(|| fixed.side(side.at.side)),
+            midspan_before_knm_m: fixed.midspan(span),
+            midspan_after_knm_m: side.midspan_after_knm_m,
+            stiffness: super::balance::side_stiffness(&self.view, side.at),
+            extension_m: reach.long / 1000.0,
+            short_extension_m: reach.short / 1000.0,
+            from_contraflexure: reach.from_contraflexure,
+        }
+    }
+
+    /// The checks of chosen bars seen from one panel, and the section's trial.
+    pub(crate) fn seen_from(&self, at: SupportSide, bars: BarChoice, give: &mut dyn FnMut(Check)) -> Trial {
+        if let Some(side) = self.sides.iter().find(|side| side.at == at) {
+            self.side_checks(side, bars, give);
+        }
+        self.trial(Place::Side(at.side), bars)
+    }
+}
+
+fn side_task<'a>(
+    view: &View<'a>,
+    at: SupportSide,
+    fixed: &'a Fixed,
+    moment: SupportMoment,
+    moments: &dyn Fn(SupportId) -> Option<SupportMoment>,
+) -> SideTask<'a> {
+    let axis = at.side.span_axis();
+    let span = fixed.basis.span_along(axis);
+    let panel = view.floor.panel(at.panel);
+    let bearings: f64 = axis.end_sides().iter().map(|side| panel.edge(*side).support_width_mm / 2.0).sum();
+    SideTask {
+        at,
+        fixed,
+        l_m: fixed.basis.length_m(span),
+        near_knm_m: moment.moment_knm_m.unwrap_or(0.0),
+        far_knm_m: new_side_moments(view, at.panel, at.side.opposite(), moments).1,
+        midspan_after_knm_m: balanced_midspans(view, at.panel, moments)[span as usize],
+        clear_span_mm: (panel.span_m(axis) * 1000.0 - bearings).max(0.0),
+    }
+}
