@@ -1,9 +1,40 @@
 //! MAIN PATH of writing: a designed floor to a workbook and a results file.
+//!
+//! ```text
+//! Submission ─▶ results::write    every number unrounded, for other programs
+//!            └▶ workbook::write   cover, panels, supports, edges, checks, queries, for people
+//! ```
+//!
+//! Each sheet is one table of columns (heading, unit, width, number format, meaning, value); all rows go
+//! through one sink, strictly in order. Both outputs take the same `f64`.
+
+mod checks;
+mod column;
+mod cover;
+mod edges;
+mod look;
+mod numbers;
+mod panels;
+mod queries;
+mod results;
+mod sink;
+mod supports;
+mod text;
+mod title_block;
+mod totals;
+mod words;
+mod workbook;
+
+#[cfg(test)]
+mod tests;
 
 use design_engine::floor::Floor;
 use design_engine::result::FloorDesign;
 
 use crate::book::{Book, PlacedQuery};
+
+pub use column::ColumnDescription;
+pub use workbook::{SheetDescription, describe_sheets};
 
 /// Everything an output is made from.
 #[derive(Debug, Clone, Copy)]
@@ -38,20 +69,30 @@ pub enum WriteError {
         /// Sheet, row and column, or key.
         place: String,
     },
+    /// More rows than a sheet holds.
+    #[error("sheet {sheet}: more than {most} rows; split the floor book or use the results file alone")]
+    TooManyRows {
+        /// The sheet.
+        sheet: &'static str,
+        /// Rows that a sheet holds.
+        most: u32,
+    },
 }
 
 /// Writes the schedule workbook.
 ///
+/// The same submission gives the same bytes.
+///
 /// # Errors
 /// See [`WriteError`].
-pub fn write_workbook(_submission: &Submission<'_>) -> Result<Vec<u8>, WriteError> {
-    Ok(Vec::new())
+pub fn write_workbook(submission: &Submission<'_>) -> Result<Vec<u8>, WriteError> {
+    workbook::write(submission)
 }
 
 /// Writes the results file (`docs/results-file.md`).
 ///
 /// # Errors
-/// See [`WriteError`].
-pub fn write_results(_submission: &Submission<'_>, _out: &mut dyn std::io::Write) -> Result<(), WriteError> {
-    Ok(())
+/// See [`WriteError`]. `out` may then hold a part of the file: write to memory first.
+pub fn write_results(submission: &Submission<'_>, out: &mut dyn std::io::Write) -> Result<(), WriteError> {
+    results::write(submission, out)
 }
