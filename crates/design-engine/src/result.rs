@@ -2,7 +2,7 @@
 
 use crate::bs8110::coefficients::PanelCase;
 use crate::check::{Check, CheckKind, Place};
-use crate::floor::{Axis, BarChoice, EdgeState, Layer, PanelId, Span, SupportId};
+use crate::floor::{Axis, BarChoice, EdgeState, Layer, PanelId, Side, Span, SupportId};
 use crate::query::Query;
 
 /// How a panel carries its load.
@@ -61,8 +61,11 @@ pub struct Basis {
     pub action: Action,
     /// The span that carries: of a two-way panel the short one.
     pub main_span: Span,
-    /// Case of the two-way tables; none for one-way action.
+    /// Case of the two-way tables; none for one-way action and cantilevers.
     pub case: Option<PanelCase>,
+    /// Edge states as they count in the panel's own case, in the order of [`crate::floor::Side::ALL`]: an edge
+    /// whose moment comes from a cantilever alone counts as discontinuous.
+    pub states: [EdgeState; 4],
 }
 
 impl Basis {
@@ -79,6 +82,12 @@ impl Basis {
             Span::Short => self.short_along,
             Span::Long => self.short_along.across(),
         }
+    }
+
+    /// State of a side as it counts in the panel's own case.
+    #[must_use]
+    pub fn state(&self, side: Side) -> EdgeState {
+        self.states[side.index()]
     }
 
     /// Which span lies along a plan axis.

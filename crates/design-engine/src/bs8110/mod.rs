@@ -10,4 +10,5 @@ pub mod loads;
 pub mod one_way;
 pub mod shear;
 pub mod spacing;
+pub mod strip;
 pub mod tables;
