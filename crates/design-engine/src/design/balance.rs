@@ -142,7 +142,8 @@ fn one_way_midspan(
     if hogging > 0.0 {
         -hogging
     } else if moved {
-        greatest_sagging(fixed.loads.ultimate_kn_m2, fixed.basis.length_m(span), new[0], new[1])
+        let l = fixed.basis.length_m(span);
+        greatest_sagging(fixed.unit_moment_knm_m[span as usize] / (l * l), l, new[0], new[1])
     } else {
         table
     }

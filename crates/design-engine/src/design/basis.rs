@@ -208,6 +208,9 @@ fn settle_panel(
         else {
             return Err("a cantilever with no edge to stand out from".to_owned());
         };
+        if panel.line_loads.iter().any(|wall| wall.along == root.span_axis()) {
+            return Err("a cantilever with a wall along its span: not covered by a metre strip".to_owned());
+        }
         let main_span = if root.span_axis() == short_along { Span::Short } else { Span::Long };
         return Ok(Basis {
             short_along,

@@ -4,9 +4,9 @@ use super::strips::StripPlace;
 use crate::bs8110::coefficients::{MomentCoefficients, PanelCase, restrained, shear, simply_supported};
 use crate::bs8110::flexure::{K_LIMIT, K_LIMIT_REDISTRIBUTED};
 use crate::bs8110::spacing::{BETA_B_MIDSPAN, BETA_B_REDUCED_SUPPORT, BETA_B_TWO_WAY_SUPPORT};
-use crate::bs8110::{deflection, loads};
+use crate::bs8110::{deflection, loads, wall_loads};
 use crate::criteria::Criteria;
-use crate::floor::{EdgeState, Panel, Side, Span};
+use crate::floor::{EdgeState, LineLoad, Panel, Side, Span};
 use crate::result::{Action, Basis, LoadBuildUp};
 
 /// A panel's coefficient moments and shears at one thickness.
@@ -21,8 +21,10 @@ pub(crate) struct Fixed {
     pub(crate) side_coefficient: [Option<f64>; 4],
     /// Shear at each side, kN/m; none at the sides of a one-way panel.
     pub(crate) side_shear_kn_m: [Option<f64>; 4],
-    /// Moment per unit coefficient, kNm/m: n lx2, or n l2 of a one-way panel.
-    pub(crate) unit_moment_knm_m: f64,
+    /// Moment per unit coefficient in the direction of each span, kNm/m: n lx2, or n l2 of a one-way panel, walls in.
+    pub(crate) unit_moment_knm_m: [f64; 2],
+    /// Root moment of a cantilever from walls on it, kNm/m; 0 elsewhere.
+    pub(crate) wall_moment_knm_m: f64,
     /// K' at its supports.
     pub(crate) support_k_limit: f64,
     /// `beta_b` at its supports.
@@ -36,12 +38,15 @@ pub(crate) struct Fixed {
 impl Fixed {
     /// Table midspan moment of a span, kNm/m; 0 in the distribution direction.
     pub(crate) fn midspan(&self, span: Span) -> f64 {
-        self.midspan_coefficient[span as usize].unwrap_or(0.0) * self.unit_moment_knm_m
+        self.midspan_coefficient[span as usize].unwrap_or(0.0) * self.unit_moment_knm_m[span as usize]
     }
 
     /// Table support moment at a side, kNm/m; 0 where none is carried.
     pub(crate) fn side(&self, side: Side) -> f64 {
-        self.side_coefficient[side.index()].unwrap_or(0.0) * self.unit_moment_knm_m
+        let span = self.basis.span_along(side.span_axis());
+        self.side_coefficient[side.index()].map_or(0.0, |coefficient| {
+            coefficient * self.unit_moment_knm_m[span as usize] + self.wall_moment_knm_m
+        })
     }
 
     /// The same as it counts in the midspan sum: a partly continuous edge and a cantilever's count 0.
@@ -60,8 +65,8 @@ pub(crate) fn fix(
 ) -> Fixed {
     let loads = loads::build_up(thickness_mm, &panel.loads, criteria);
     match (basis.case, strip) {
-        (None, Some(place)) => one_way(panel, thickness_mm, basis, loads, place),
-        (None, None) => cantilever(thickness_mm, basis, loads),
+        (None, Some(place)) => one_way(panel, thickness_mm, basis, loads, place, criteria),
+        (None, None) => cantilever(panel, thickness_mm, basis, loads, criteria),
         _ => two_way(panel, thickness_mm, basis, loads, criteria),
     }
 }
@@ -76,7 +81,8 @@ fn basic(basis: &Basis) -> f64 {
 }
 
 fn two_way(panel: &Panel, thickness_mm: f64, basis: Basis, loads: LoadBuildUp, criteria: &Criteria) -> Fixed {
-    let n = loads.ultimate_kn_m2;
+    let walls = wall_loads::two_way(&panel.line_loads, basis.short_along, basis.lx_m, basis.ly_m);
+    let n = loads.ultimate_kn_m2 + criteria.dead_load_factor * walls.shear_kn_m2;
     let ratio = basis.span_ratio();
     let free_corners = basis.action == Action::TwoWaySimplySupported;
     let case = basis.case.unwrap_or(PanelCase::new(2, 2));
@@ -120,7 +126,9 @@ fn two_way(panel: &Panel, thickness_mm: f64, basis: Basis, loads: LoadBuildUp, c
         midspan_coefficient: [Some(moments.short_midspan), Some(moments.long_midspan)],
         side_coefficient,
         side_shear_kn_m,
-        unit_moment_knm_m: n * basis.lx_m * basis.lx_m,
+        unit_moment_knm_m: [walls.short_kn_m2, walls.long_kn_m2]
+            .map(|q| (loads.ultimate_kn_m2 + criteria.dead_load_factor * q) * basis.lx_m * basis.lx_m),
+        wall_moment_knm_m: 0.0,
         support_k_limit: K_LIMIT,
         support_beta_b: BETA_B_TWO_WAY_SUPPORT,
         basic_span_depth: basic(&basis),
@@ -152,9 +160,16 @@ fn made_continuous(case: PanelCase, long_edge: bool) -> PanelCase {
     }
 }
 
-fn one_way(panel: &Panel, thickness_mm: f64, basis: Basis, loads: LoadBuildUp, place: &StripPlace) -> Fixed {
-    let n = loads.ultimate_kn_m2;
+fn one_way(
+    panel: &Panel,
+    thickness_mm: f64,
+    basis: Basis,
+    loads: LoadBuildUp,
+    place: &StripPlace,
+    criteria: &Criteria,
+) -> Fixed {
     let l = basis.length_m(basis.main_span);
+    let n = loads.ultimate_kn_m2 + criteria.dead_load_factor * one_way_walls(panel, &basis);
     let coefficients = &place.coefficients;
     let mut midspan_coefficient = [None; 2];
     midspan_coefficient[basis.main_span as usize] = Some(coefficients.midspan);
@@ -178,7 +193,8 @@ fn one_way(panel: &Panel, thickness_mm: f64, basis: Basis, loads: LoadBuildUp, p
         midspan_coefficient,
         side_coefficient,
         side_shear_kn_m,
-        unit_moment_knm_m: n * l * l,
+        unit_moment_knm_m: [n * l * l; 2],
+        wall_moment_knm_m: 0.0,
         support_k_limit: K_LIMIT_REDISTRIBUTED,
         support_beta_b: BETA_B_REDUCED_SUPPORT,
         basic_span_depth: basic(&basis),
@@ -186,10 +202,30 @@ fn one_way(panel: &Panel, thickness_mm: f64, basis: Basis, loads: LoadBuildUp, p
     }
 }
 
+/// Equivalent uniform load of the walls on a one-way panel, kN/m2, characteristic.
+pub(crate) fn one_way_walls(panel: &Panel, basis: &Basis) -> f64 {
+    let axis = basis.axis_of(basis.main_span);
+    let (l, width) = (basis.length_m(basis.main_span), panel.span_m(axis.across()));
+    wall_loads::one_way(&panel.line_loads, axis, l, width).short_kn_m2
+}
+
 /// A cantilever of length l: n l2/2 and n l at its root, never balanced or reduced.
-fn cantilever(thickness_mm: f64, basis: Basis, loads: LoadBuildUp) -> Fixed {
+fn cantilever(
+    panel: &Panel,
+    thickness_mm: f64,
+    basis: Basis,
+    loads: LoadBuildUp,
+    criteria: &Criteria,
+) -> Fixed {
     let n = loads.ultimate_kn_m2;
     let l = basis.length_m(basis.main_span);
+    // Walls along the root, each at its distance from it; a metre of wall is carried by a metre of root.
+    let axis = basis.axis_of(basis.main_span);
+    let root_at_lesser_end = basis.state(axis.end_sides()[0]) == EdgeState::Continuous;
+    let arm = |offset: f64| if root_at_lesser_end { offset } else { panel.span_m(axis) - offset };
+    let factored = |wall: &LineLoad| criteria.dead_load_factor * wall.load_kn_m;
+    let wall_moment_knm_m = panel.line_loads.iter().map(|wall| factored(wall) * arm(wall.offset_m)).sum();
+    let wall_shear: f64 = panel.line_loads.iter().map(factored).sum();
     let at_root =
         |value: f64| Side::ALL.map(|side| (basis.state(side) == EdgeState::Continuous).then_some(value));
     Fixed {
@@ -198,8 +234,9 @@ fn cantilever(thickness_mm: f64, basis: Basis, loads: LoadBuildUp) -> Fixed {
         loads,
         midspan_coefficient: [None; 2],
         side_coefficient: at_root(0.5),
-        side_shear_kn_m: at_root(n * l),
-        unit_moment_knm_m: n * l * l,
+        side_shear_kn_m: at_root(n * l + wall_shear),
+        unit_moment_knm_m: [n * l * l; 2],
+        wall_moment_knm_m,
         support_k_limit: K_LIMIT,
         support_beta_b: BETA_B_MIDSPAN,
         basic_span_depth: deflection::BASIC_CANTILEVER,

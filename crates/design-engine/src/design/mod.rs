@@ -3,11 +3,14 @@
 mod balance;
 mod basis;
 mod bottom;
+mod corners;
 mod fixed;
+mod openings;
 mod panel;
 mod queries;
 mod regions;
 mod section;
+mod side_loads;
 mod strips;
 mod thickness;
 mod top;
@@ -237,6 +240,10 @@ impl<'a> Stage<'a> {
             loads: loads::build_up(panel.thickness_mm, &panel.loads, self.view.criteria),
             sections: Vec::new(),
             checks: Vec::new(),
+            corners: Vec::new(),
+            openings: Vec::new(),
+            side_loads: side_loads::side_loads(&self.view, id, &|s| self.moment(s)),
+            total_ultimate_kn: side_loads::total_ultimate_kn(&self.view, id),
             deflection: None,
             governing: None,
             thickness_governed_by: None,
@@ -275,6 +282,12 @@ impl<'a> Stage<'a> {
         design.thickness_governed_by = in_place.governed_by(&assembled.checks);
         if assembled.checks.iter().any(|check| check.kind == CheckKind::Deflection && !check.ok) {
             design.least_thickness_mm = in_place.least_that_passes();
+        }
+        if let Some(basis) = &design.basis {
+            let View { floor, criteria, .. } = self.view;
+            design.corners =
+                corners::corners(floor, criteria, panel, basis, &assembled.sections, &supports, designs);
+            design.openings = openings::openings(panel, basis, &assembled.sections, designs);
         }
         design.sections = assembled.sections;
         design.checks = assembled.checks;

@@ -121,7 +121,7 @@ fn support_sections(
         section.support = Some(support.id);
         section.layer = support.layer;
         section.coefficient = fixed.side_coefficient[support.side.index()];
-        section.moment_from_coefficient_knm_m = section.coefficient.map(|c| c * fixed.unit_moment_knm_m);
+        section.moment_from_coefficient_knm_m = section.coefficient.map(|_| fixed.side(support.side));
         section.moment_balanced_knm_m = section.moment_knm_m;
         sections.push(section);
     }

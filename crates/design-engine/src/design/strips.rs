@@ -1,6 +1,7 @@
 //! One-way strips: which coefficients each one-way panel takes.
 
 use super::basis::Settled;
+use super::fixed::one_way_walls;
 use crate::bs8110::loads;
 use crate::bs8110::one_way::{
     GREATEST_IMPOSED_KN_M2, GREATEST_IMPOSED_TO_DEAD, GREATEST_VARIATION, LEAST_BAY_M2, OneWayCoefficients,
@@ -134,11 +135,15 @@ impl<'a> Strip<'a> {
             loads::build_up(panel.thickness_mm, &panel.loads, criteria)
         };
         let builds: Vec<LoadBuildUp> = panels.iter().map(build).collect();
-        let span = |(id, build): (&PanelId, &LoadBuildUp)| StripSpan {
-            l_m: settled[id.0].as_ref().map_or(1.0, |b| b.length_m(b.main_span)),
-            h_mm: floor.panel(*id).thickness_mm,
-            ultimate_kn_m2: build.ultimate_kn_m2,
-            least_kn_m2: build.dead_kn_m2,
+        let span = |(id, build): (&PanelId, &LoadBuildUp)| {
+            let panel = floor.panel(*id);
+            let walls = settled[id.0].as_ref().map_or(0.0, |basis| one_way_walls(panel, basis));
+            StripSpan {
+                l_m: settled[id.0].as_ref().map_or(1.0, |b| b.length_m(b.main_span)),
+                h_mm: panel.thickness_mm,
+                ultimate_kn_m2: build.ultimate_kn_m2 + criteria.dead_load_factor * walls,
+                least_kn_m2: build.dead_kn_m2 + walls,
+            }
         };
         let spans = panels.iter().zip(&builds).map(span).collect();
         Strip { floor, panels, ends, builds, spans }

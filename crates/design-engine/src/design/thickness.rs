@@ -82,13 +82,13 @@ impl PanelInPlace<'_> {
         None
     }
 
-    /// Least thickness in whole 5 mm above the present one at which bending, shear, deflection and bond pass.
+    /// Least thickness in whole 5 mm above the present one at which deflection passes.
     pub(crate) fn least_that_passes(&self) -> Option<f64> {
         let mut thickness =
             ((self.view.fixed(self.id)?.thickness_mm + 1e-6) / STEP_MM).floor() * STEP_MM + STEP_MM;
         while thickness <= GREATEST_MM {
             let checks = self.checks_at(thickness);
-            if checks.iter().all(|check| check.ok || !check.kind.may_govern_while_passing()) {
+            if checks.iter().all(|check| check.ok || check.kind != CheckKind::Deflection) {
                 return Some(thickness);
             }
             thickness += STEP_MM;
