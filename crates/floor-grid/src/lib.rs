@@ -47,6 +47,7 @@
 //! assert_eq!(floor.supports[0].name.as_deref(), Some("2/A-B"));
 //! ```
 mod actions;
+pub mod beam_loads;
 mod chosen_bars;
 mod edge_states;
 mod gridlines;
