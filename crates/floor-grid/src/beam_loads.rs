@@ -4,6 +4,7 @@ use design_engine::floor::{Axis, EdgeState, Floor, PanelId, Side, TenthMm};
 use design_engine::result::{FloorDesign, SideLoad};
 
 use crate::layout::Layout;
+use crate::panels::gridline_of;
 
 /// Load that one panel puts on the stretch of line along one of its sides.
 #[derive(Debug, Clone, PartialEq)]
@@ -87,17 +88,11 @@ fn row(layout: &Layout, floor: &Floor, id: PanelId, side: Side, load: SideLoad) 
     let length_m = panel.span_m(axis.across());
     let names = layout.panels.get(id.0).filter(|_| panel.plan.is_some()).map(|row| {
         let name = |id| layout.gridline(id).name.clone();
-        let line = match side {
-            Side::North => row.y_to,
-            Side::East => row.x_to,
-            Side::South => row.y_from,
-            Side::West => row.x_from,
-        };
         let ends = match axis {
             Axis::X => [row.y_from, row.y_to],
             Axis::Y => [row.x_from, row.x_to],
         };
-        (name(line), ends.map(name))
+        (name(gridline_of(row, side)), ends.map(name))
     });
     let (at, from, to) = match (panel.plan, side) {
         (Some(plan), Side::North) => (plan.y1, plan.x0, plan.x1),
