@@ -29,11 +29,13 @@ pub enum CheckKind {
     CoverForBarAndAggregate,
     /// Thickness for fire.
     ThicknessForFire,
+    /// A cantilever lifting the far support of its back-span.
+    Uplift,
 }
 
 impl CheckKind {
     /// Every kind, in the order of printing.
-    pub const ALL: [CheckKind; 12] = [
+    pub const ALL: [CheckKind; 13] = [
         CheckKind::Bending,
         CheckKind::Shear,
         CheckKind::Deflection,
@@ -46,6 +48,7 @@ impl CheckKind {
         CheckKind::CoverForFire,
         CheckKind::CoverForBarAndAggregate,
         CheckKind::ThicknessForFire,
+        CheckKind::Uplift,
     ];
 
     /// Its name in every output.
@@ -64,6 +67,7 @@ impl CheckKind {
             CheckKind::CoverForFire => "cover for fire",
             CheckKind::CoverForBarAndAggregate => "cover for bar and aggregate",
             CheckKind::ThicknessForFire => "thickness for fire",
+            CheckKind::Uplift => "uplift at far support",
         }
     }
 

@@ -328,6 +328,40 @@ pub struct BarChoice {
     pub spacing_mm: f64,
 }
 
+/// A hole through a panel, its sides along x and y.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct PanelOpening {
+    /// Distance of its west side from the panel's west edge line, m.
+    pub from_west_m: f64,
+    /// Distance of its south side from the panel's south edge line, m.
+    pub from_south_m: f64,
+    /// Widths along x and along y, m.
+    pub widths_m: [f64; 2],
+}
+
+/// A wall or other permanent line load on a panel.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct LineLoad {
+    /// Axis it runs along.
+    pub along: Axis,
+    /// Distance from the west (along y) or south (along x) edge line, m.
+    pub offset_m: f64,
+    /// Start along it, from the south or west edge line, m.
+    pub from_m: f64,
+    /// End along it, m.
+    pub to_m: f64,
+    /// Characteristic load, kN/m.
+    pub load_kn_m: f64,
+}
+
+impl LineLoad {
+    /// Length, m.
+    #[must_use]
+    pub fn length_m(&self) -> f64 {
+        self.to_m - self.from_m
+    }
+}
+
 /// One slab panel.
 #[derive(Debug, Clone, PartialEq)]
 pub struct Panel {
@@ -353,6 +387,10 @@ pub struct Panel {
     pub edges: [Edge; 4],
     /// Stated bars of the bottom, by the span they run along: short, long.
     pub chosen_bottom: [Option<BarChoice>; 2],
+    /// Holes through it.
+    pub openings: Vec<PanelOpening>,
+    /// Walls on it.
+    pub line_loads: Vec<LineLoad>,
     /// Why this panel cannot be designed, where the layout already knows.
     pub not_designed: Option<String>,
 }

@@ -1,8 +1,9 @@
 //! What the design of a floor gives: panels with their sections and checks, supports with their bars.
 
 use crate::bs8110::coefficients::PanelCase;
+use crate::bs8110::corners::CornerState;
 use crate::check::{Check, CheckKind, Place};
-use crate::floor::{Axis, BarChoice, EdgeState, Layer, PanelId, Span, SupportId};
+use crate::floor::{Axis, BarChoice, EdgeState, Layer, PanelId, PanelOpening, Side, Span, SupportId};
 use crate::query::Query;
 
 /// How a panel carries its load.
@@ -61,8 +62,11 @@ pub struct Basis {
     pub action: Action,
     /// The span that carries: of a two-way panel the short one.
     pub main_span: Span,
-    /// Case of the two-way tables; none for one-way action.
+    /// Case of the two-way tables; none for one-way action and cantilevers.
     pub case: Option<PanelCase>,
+    /// Edge states as they count in the panel's own case, in the order of [`crate::floor::Side::ALL`]: an edge
+    /// whose moment comes from a cantilever alone counts as discontinuous.
+    pub states: [EdgeState; 4],
 }
 
 impl Basis {
@@ -79,6 +83,12 @@ impl Basis {
             Span::Short => self.short_along,
             Span::Long => self.short_along.across(),
         }
+    }
+
+    /// State of a side as it counts in the panel's own case.
+    #[must_use]
+    pub fn state(&self, side: Side) -> EdgeState {
+        self.states[side.index()]
     }
 
     /// Which span lies along a plan axis.
@@ -147,6 +157,77 @@ pub struct DeflectionWorking {
     pub modification_factor: f64,
 }
 
+/// Load that a panel puts on the support along one of its sides (3.5.3.7), per metre of the loaded length.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct SideLoad {
+    /// Characteristic dead load, kN/m.
+    pub dead_kn_m: f64,
+    /// Characteristic imposed load, kN/m.
+    pub imposed_kn_m: f64,
+    /// Ultimate load, kN/m.
+    pub ultimate_kn_m: f64,
+    /// Share of the edge, about its middle, that is loaded: 0.75 of a two-way panel's, all of a one-way panel's.
+    pub loaded_share: f64,
+}
+
+/// Torsion steel at one corner (3.5.3.5).
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct CornerDesign {
+    /// The north or south side, and the east or west side, that meet there.
+    pub sides: [Side; 2],
+    /// Continuity of its edges.
+    pub state: CornerState,
+    /// Extent from both edges, m: lx/5.
+    pub extent_m: f64,
+    /// Required in each of four layers, mm2/m.
+    pub as_required_mm2_m: f64,
+    /// Already there: bottom along x, bottom along y, top along x, top along y, mm2/m. At a discontinuous edge the
+    /// top bars are those of 3.12.10.3.2: half the bottom steel in that direction, not under the minimum.
+    pub as_present_mm2_m: [f64; 4],
+    /// To be added in the same four layers, mm2/m.
+    pub as_to_add_mm2_m: [f64; 4],
+}
+
+impl CornerDesign {
+    /// `north-east` and so on.
+    #[must_use]
+    pub fn name(&self) -> String {
+        format!("{}-{}", self.sides[0].word(), self.sides[1].word())
+    }
+}
+
+/// Bars of one layer that an opening cuts.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct CutLayer {
+    /// The layer.
+    pub layer: Layer,
+    /// Axis its bars run along.
+    pub bars_along: Axis,
+    /// The section whose bars they are.
+    pub at: Place,
+    /// The bars.
+    pub bars: BarChoice,
+    /// Number of bars cut, at most.
+    pub cut: f64,
+    /// Trimming steel on each side of the opening, mm2: half of what is cut.
+    pub each_side_mm2: f64,
+}
+
+/// One opening of a designed panel.
+#[derive(Debug, Clone, PartialEq)]
+pub struct OpeningDesign {
+    /// Where it is.
+    pub opening: PanelOpening,
+    /// True where bars are moved aside and none is cut.
+    pub displaced: bool,
+    /// Layers cut; empty where displaced.
+    pub layers: Vec<CutLayer>,
+    /// True where it is wider than a quarter of a span: outside the coefficient method.
+    pub over_quarter_of_span: bool,
+    /// True where it lies within d of a support's face: outside the coefficient method.
+    pub within_d_of_support: bool,
+}
+
 /// A panel's design.
 #[derive(Debug, Clone, PartialEq)]
 pub struct PanelDesign {
@@ -164,6 +245,14 @@ pub struct PanelDesign {
     pub sections: Vec<Section>,
     /// Checks in a fixed order.
     pub checks: Vec<Check>,
+    /// Corners of a restrained two-way panel; empty for the others.
+    pub corners: Vec<CornerDesign>,
+    /// Openings, in book order.
+    pub openings: Vec<OpeningDesign>,
+    /// Loads on the supports along its sides, in the order of [`crate::floor::Side::ALL`].
+    pub side_loads: [Option<SideLoad>; 4],
+    /// Ultimate load of the whole panel, walls in, kN.
+    pub total_ultimate_kn: f64,
     /// Working of deflection; none where not designed.
     pub deflection: Option<DeflectionWorking>,
     /// The governing check, an index into `checks`.

@@ -47,6 +47,7 @@
 //! assert_eq!(floor.supports[0].name.as_deref(), Some("2/A-B"));
 //! ```
 mod actions;
+pub mod beam_loads;
 mod chosen_bars;
 mod edge_states;
 mod gridlines;
@@ -54,6 +55,7 @@ pub mod layout;
 mod loose_panels;
 mod not_designed;
 mod observations;
+mod on_panels;
 mod panels;
 mod rows_on_plan;
 mod shared_edges;
@@ -110,7 +112,8 @@ pub fn lay_out(layout: &Layout) -> (Floor, Vec<Query>) {
         floor.panels.push(panel);
         actions.push(loose_action(row));
     }
-    not_designed::mark_undesigned(layout, &actions, &found.verdicts, &mut floor, &mut queries);
+    on_panels::put_on_panels(layout, &mut floor, &mut queries);
+    not_designed::mark_undesigned(&actions, &found.verdicts, &mut floor, &mut queries);
     chosen_bars::place_chosen_bars(layout, &mut floor, &mut queries);
     (floor, queries)
 }
@@ -128,6 +131,8 @@ fn grid_panel(row: &GridPanel, at: Option<&Placed>, edges: [Edge; 4]) -> Panel {
         top_level_mm: row.top_level_mm,
         edges,
         chosen_bottom: [None; 2],
+        openings: Vec::new(),
+        line_loads: Vec::new(),
         not_designed: at.is_none().then(|| "its extents are wrong".to_owned()),
     }
 }

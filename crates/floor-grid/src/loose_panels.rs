@@ -42,6 +42,8 @@ pub(crate) fn loose_panel(
         top_level_mm: 0.0,
         edges,
         chosen_bottom: [None; 2],
+        openings: Vec::new(),
+        line_loads: Vec::new(),
         not_designed: None,
     }
 }

@@ -1,13 +1,12 @@
 //! Panels that the layout already knows to be outside what is designed: each with its reason, so that
 //! none is designed by a method that does not hold for it.
 
-use design_engine::floor::{EdgeState, Floor, PanelId, Side, Spanning};
+use design_engine::floor::{EdgeState, Floor, PanelId, Side};
 use design_engine::query::{Query, Severity, Subject};
 
 use crate::actions::{Action, STEP_MM};
 use crate::edge_states::Verdict;
 use crate::gridlines::list;
-use crate::layout::Layout;
 
 /// Why a panel is not designed, and what to do about it.
 struct Reason {
@@ -19,32 +18,17 @@ struct Reason {
 
 /// Marks panels that are not designed and says so. `verdicts` are those of the grid's panels.
 pub(crate) fn mark_undesigned(
-    layout: &Layout,
     actions: &[Action],
     verdicts: &[[Vec<Verdict>; 4]],
     floor: &mut Floor,
     queries: &mut Vec<Query>,
 ) {
     let none = Default::default();
-    let mut reasons: Vec<Vec<Reason>> = (0..floor.panels.len())
+    let reasons: Vec<Vec<Reason>> = (0..floor.panels.len())
         .map(|index| {
             edge_reasons(floor, PanelId(index), actions[index], verdicts.get(index).unwrap_or(&none))
         })
         .collect();
-    for (index, panel) in floor.panels.iter().enumerate() {
-        if actions[index] == Action::Cantilever(None) || panel.spanning != Spanning::Cantilever {
-            continue;
-        }
-        let back_spans = panel.edges.iter().flat_map(|edge| &edge.segments).filter(|s| s.continuous);
-        for back_span in back_spans.filter_map(|segment| segment.neighbour) {
-            reasons[back_span.0].push(Reason {
-                side: None,
-                text: format!("cantilever {} stands out from it", panel.mark),
-                remedy: "design it by hand with the cantilever, or state its edge there discontinuous",
-            });
-        }
-    }
-    sheet_reasons(layout, floor, &mut reasons);
     for (panel, reasons) in floor.panels.iter_mut().zip(reasons) {
         for reason in &reasons {
             let subject = match reason.side {
@@ -85,14 +69,9 @@ fn edge_reasons(floor: &Floor, id: PanelId, action: Action, verdicts: &[Vec<Verd
         let held = Side::ALL
             .into_iter()
             .any(|side| root.is_some_and(|root| side != root) && panel.edge(side).state != EdgeState::Free);
-        return vec![cantilever_reason(panel.is_loose(), root, held)];
+        return cantilever_reason(panel.is_loose(), root, held).into_iter().collect();
     }
     let state = |side: Side| panel.edge(side).state;
-    let partly = about(
-        sides(&|side| state(side) == EdgeState::PartlyContinuous),
-        &|edges, are| format!("{edges} {are} partly continuous: not designed yet"),
-        "part the panel at its neighbours' edges, or design it by hand",
-    );
     let unheld = about(
         sides(&|side| {
             let verdicts = &verdicts[side.index()];
@@ -108,17 +87,17 @@ fn edge_reasons(floor: &Floor, id: PanelId, action: Action, verdicts: &[Vec<Verd
         &|edges, are| format!("{edges} {are} free: outside the coefficient tables"),
         "give the edge a support, state the panel one-way between its supports, or design it by hand",
     );
-    [partly, unheld, free].into_iter().flatten().collect()
+    [unheld, free].into_iter().flatten().collect()
 }
 
 /// `held`: an edge besides the root is supported.
-fn cantilever_reason(loose: bool, root: Option<Side>, held: bool) -> Reason {
+fn cantilever_reason(loose: bool, root: Option<Side>, held: bool) -> Option<Reason> {
     let (text, remedy) = match root {
         Some(_) if held => (
             "a cantilever's other three edges must be free".to_owned(),
             "leave the cells of its other edges blank, or do not state it a cantilever",
         ),
-        Some(_) => ("cantilevers are not designed yet".to_owned(), "design it by hand"),
+        Some(_) => return None,
         None if loose => (
             "a cantilever needs a back-span, which a loose panel has not".to_owned(),
             "give it a row in the Panels sheet beside its back-span",
@@ -131,25 +110,5 @@ fn cantilever_reason(loose: bool, root: Option<Side>, held: bool) -> Reason {
             "check its gridlines and neighbours; state the edge it stands out from continuous",
         ),
     };
-    Reason { side: None, text, remedy }
-}
-
-/// Panels named by the `Openings` and `Wall loads` sheets.
-fn sheet_reasons(layout: &Layout, floor: &Floor, reasons: &mut [Vec<Reason>]) {
-    let mut marks: Vec<(&str, usize)> =
-        floor.panels.iter().enumerate().map(|(index, panel)| (panel.mark.as_str(), index)).collect();
-    marks.sort_unstable();
-    let openings = layout.openings.iter().map(|row| (&row.panel, "an opening is given: not designed yet"));
-    let walls = layout.wall_loads.iter().map(|row| (&row.panel, "a wall load is given: not designed yet"));
-    for (mark, text) in openings.chain(walls) {
-        let Ok(found) = marks.binary_search_by_key(&mark.as_str(), |(mark, _)| mark) else { continue };
-        let reasons = &mut reasons[marks[found].1];
-        if reasons.iter().all(|reason| reason.text != text) {
-            reasons.push(Reason {
-                side: None,
-                text: text.to_owned(),
-                remedy: "take the row out and design for it by hand",
-            });
-        }
-    }
+    Some(Reason { side: None, text, remedy })
 }

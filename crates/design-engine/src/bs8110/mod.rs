@@ -2,6 +2,7 @@
 
 pub mod anchorage;
 pub mod coefficients;
+pub mod corners;
 pub mod cover;
 pub mod curtailment;
 pub mod deflection;
@@ -10,4 +11,6 @@ pub mod loads;
 pub mod one_way;
 pub mod shear;
 pub mod spacing;
+pub mod strip;
 pub mod tables;
+pub mod wall_loads;

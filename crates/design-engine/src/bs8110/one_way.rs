@@ -13,13 +13,13 @@ pub struct OneWayCoefficients {
     pub ends: [f64; 2],
     /// Shears at the two ends.
     pub shears: [f64; 2],
-    /// True where the 20 % redistribution is in the support moments.
-    pub redistributed: bool,
+    /// Greatest hogging at midspan in any load case; 0 where there is none.
+    pub midspan_hogging: f64,
 }
 
 /// A panel simply supported at both ends: n l2/8, n l/2 (statics).
 pub const SIMPLY_SUPPORTED: OneWayCoefficients =
-    OneWayCoefficients { midspan: 0.125, ends: [0.0; 2], shears: [0.5; 2], redistributed: false };
+    OneWayCoefficients { midspan: 0.125, ends: [0.0; 2], shears: [0.5; 2], midspan_hogging: 0.0 };
 
 /// Greatest variation of spans (and here of loads) for Table 3.12, as a share of the greatest (3.5.2.4, 3.4.3).
 pub const GREATEST_VARIATION: f64 = 0.15;
@@ -76,6 +76,6 @@ pub fn table_3_12(index: usize, count: usize, end_continuous: [bool; 2]) -> OneW
         midspan,
         ends: ends.map(|end| end.0),
         shears: ends.map(|end| end.1),
-        redistributed: true,
+        midspan_hogging: 0.0,
     }
 }

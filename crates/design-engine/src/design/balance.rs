@@ -1,6 +1,8 @@
 //! Moments at supports and the midspan moments that follow from them.
 
+use super::fixed::Fixed;
 use super::view::View;
+use crate::bs8110::strip::greatest_sagging;
 use crate::floor::{EdgeState, PanelId, Side, Span, Support, SupportId, SupportKind, SupportSide};
 use crate::result::Action;
 use crate::supports::{difference, shared_moment, stiffness};
@@ -19,9 +21,8 @@ pub(crate) struct SupportMoment {
 /// Stiffness of a panel's span across one of its sides.
 pub(crate) fn side_stiffness(view: &View<'_>, at: SupportSide) -> f64 {
     let Some(fixed) = view.fixed(at.panel) else { return 0.0 };
-    let panel = view.floor.panel(at.panel);
     let span = fixed.basis.span_along(at.side.span_axis());
-    let far = panel.edge(at.side.opposite()).state;
+    let far = fixed.basis.state(at.side.opposite());
     stiffness(fixed.thickness_mm, fixed.basis.length_m(span), far != EdgeState::Continuous)
 }
 
@@ -32,9 +33,7 @@ pub(crate) fn support_moment(view: &View<'_>, support: &Support) -> Option<Suppo
     let (near, near_fixed) = *sides.first()?;
     let lesser_over_greater = |a: f64, b: f64| a.min(b) / a.max(b);
     let ratios = sides.get(1).map(|(far, far_fixed)| {
-        let length = |at: &SupportSide, f: &super::fixed::Fixed| {
-            f.basis.length_m(f.basis.span_along(at.side.span_axis()))
-        };
+        let length = |at: &SupportSide, f: &Fixed| f.basis.length_m(f.basis.span_along(at.side.span_axis()));
         (
             lesser_over_greater(near_fixed.loads.ultimate_kn_m2, far_fixed.loads.ultimate_kn_m2),
             lesser_over_greater(length(&near, near_fixed), length(far, far_fixed)),
@@ -57,8 +56,13 @@ pub(crate) fn support_moment(view: &View<'_>, support: &Support) -> Option<Suppo
     };
     let m_far = far_fixed.side(far.side);
     result.difference_pct = Some(100.0 * difference(m_near, m_far));
-    let one_way = |f: &super::fixed::Fixed| f.basis.action == Action::OneWay;
-    // Table 3.12 already holds the redistribution of a strip: the greater of its two values, never a release.
+    if [near_fixed, far_fixed].iter().any(|f| f.basis.action == Action::Cantilever) {
+        // A cantilever's moment is neither balanced nor reduced; the back-span's own is the least there.
+        result.moment_knm_m = Some(m_near.max(m_far));
+        return Some(result);
+    }
+    let one_way = |f: &Fixed| f.basis.action == Action::OneWay;
+    // A strip is in equilibrium by its analysis or table: the greater of the two values, never a release.
     let threshold = if one_way(near_fixed) && one_way(far_fixed) {
         f64::INFINITY
     } else {
@@ -80,7 +84,7 @@ pub(crate) fn new_side_moments(
 ) -> (f64, f64) {
     let panel = view.floor.panel(id);
     let Some(fixed) = view.fixed(id) else { return (0.0, 0.0) };
-    if panel.edge(side).state != EdgeState::Continuous {
+    if fixed.basis.state(side) != EdgeState::Continuous {
         return (0.0, 0.0);
     }
     let mut range: Option<(f64, f64)> = None;
@@ -106,14 +110,41 @@ pub(crate) fn balanced_midspans(
     let Some(fixed) = view.fixed(id) else { return [0.0; 2] };
     [Span::Short, Span::Long].map(|span| {
         let table = fixed.midspan(span);
-        if fixed.basis.action == Action::OneWay {
-            return table;
-        }
         let sides = fixed.basis.axis_of(span).end_sides();
+        if fixed.basis.action != Action::TwoWayRestrained {
+            return one_way_midspan(view, id, fixed, span, sides, moments);
+        }
         let rise: f64 = sides
             .into_iter()
-            .map(|side| new_side_moments(view, id, side, moments).0 - fixed.side(side))
+            .map(|side| new_side_moments(view, id, side, moments).0 - fixed.side_counted(side))
             .sum();
         table - rise / 2.0
     })
+}
+
+/// Midspan of a one-way panel with its final end moments (statics). A span that no release touched keeps what
+/// its strip gave; where some load case makes midspan hog, that hogging is given, below zero.
+fn one_way_midspan(
+    view: &View<'_>,
+    id: PanelId,
+    fixed: &Fixed,
+    span: Span,
+    sides: [Side; 2],
+    moments: &dyn Fn(SupportId) -> Option<SupportMoment>,
+) -> f64 {
+    let table = fixed.midspan(span);
+    if fixed.basis.action != Action::OneWay || span != fixed.basis.main_span {
+        return table;
+    }
+    let new = sides.map(|side| new_side_moments(view, id, side, moments).0);
+    let moved = sides.iter().zip(new).any(|(side, new)| (new - fixed.side_counted(*side)).abs() > 1e-9);
+    let hogging = fixed.midspan_hogging_knm_m;
+    if hogging > 0.0 {
+        -hogging
+    } else if moved {
+        let l = fixed.basis.length_m(span);
+        greatest_sagging(fixed.unit_moment_knm_m[span as usize] / (l * l), l, new[0], new[1])
+    } else {
+        table
+    }
 }

@@ -2,7 +2,7 @@
 
 use crate::bs8110::coefficients::PanelCase;
 use crate::criteria::{Criteria, SpanBasis};
-use crate::floor::{Axis, Corners, EdgeState, Floor, Panel, Side, Span, Spanning};
+use crate::floor::{Axis, Corners, EdgeState, Floor, Panel, PanelId, Side, Span, Spanning};
 use crate::query::{Query, Severity};
 use crate::result::{Action, Basis};
 
@@ -54,9 +54,7 @@ fn one_way_axis(panel: &Panel) -> Result<Option<Axis>, String> {
     let ratio = long_over_short(panel.spans_m);
     let short = if panel.spans_m[0] <= panel.spans_m[1] { Axis::X } else { Axis::Y };
     let axis = match panel.spanning {
-        Spanning::Cantilever => {
-            return Err("a cantilever: cantilevers and their back-spans are not designed yet".to_owned());
-        }
+        Spanning::Cantilever => return Ok(None),
         Spanning::OneWay(axis) => Some(axis),
         Spanning::TwoWay if ratio > GREATEST_TWO_WAY_RATIO + 1e-9 => {
             return Err(format!(
@@ -84,9 +82,32 @@ fn one_way_axis(panel: &Panel) -> Result<Option<Axis>, String> {
     }
 }
 
-/// Number of discontinuous edges at the ends of the span along an axis.
-fn discontinuous_ends(panel: &Panel, axis: Axis) -> u8 {
-    axis.end_sides().into_iter().map(|side| u8::from(panel.edge(side).state != EdgeState::Continuous)).sum()
+/// Number of edges at the ends of the span along an axis that do not count as continuous.
+fn discontinuous_ends(states: &[EdgeState; 4], axis: Axis) -> u8 {
+    axis.end_sides().into_iter().map(|side| u8::from(states[side.index()] != EdgeState::Continuous)).sum()
+}
+
+/// Edge states as they count in the panel's own case: a segment against a cantilever is no restraint of the
+/// panel (its moment does not depend on the panel's load), so such an edge is not wholly continuous.
+fn own_states(floor: &Floor, panel: &Panel) -> [EdgeState; 4] {
+    Side::ALL.map(|side| {
+        let edge = panel.edge(side);
+        let cantilever = |neighbour: Option<PanelId>| {
+            neighbour.is_some_and(|id| floor.panel(id).spanning == Spanning::Cantilever)
+        };
+        let loaded = edge.segments.iter().filter(|s| s.continuous && cantilever(s.neighbour)).count();
+        let continuous = edge.segments.iter().filter(|s| s.continuous).count();
+        match edge.state {
+            EdgeState::Continuous if loaded == 0 || panel.spanning == Spanning::Cantilever => {
+                EdgeState::Continuous
+            }
+            EdgeState::Continuous | EdgeState::PartlyContinuous if loaded == continuous => {
+                EdgeState::Discontinuous
+            }
+            EdgeState::Continuous => EdgeState::PartlyContinuous,
+            state => state,
+        }
+    })
 }
 
 /// Sum of the neighbours' spans across the ends of the span along an axis, each by its share of the edge.
@@ -102,14 +123,21 @@ fn neighbour_spans(floor: &Floor, panel: &Panel, axis: Axis) -> f64 {
 
 /// Axis of the short span; of a square panel by the rules that keep a turned floor the same floor. The flag
 /// is true where only the last of them, x, could tell.
-fn short_axis(floor: &Floor, panel: &Panel, spans: [f64; 2], most: Option<Axis>, tol: f64) -> (Axis, bool) {
+fn short_axis(
+    floor: &Floor,
+    panel: &Panel,
+    states: &[EdgeState; 4],
+    spans: [f64; 2],
+    most: Option<Axis>,
+    tol: f64,
+) -> (Axis, bool) {
     if (spans[0] - spans[1]).abs() > tol + 1e-9 {
         return (if spans[0] < spans[1] { Axis::X } else { Axis::Y }, false);
     }
     if panel.is_loose() {
         return (Axis::X, false);
     }
-    let by_ends = discontinuous_ends(panel, Axis::X).cmp(&discontinuous_ends(panel, Axis::Y));
+    let by_ends = discontinuous_ends(states, Axis::X).cmp(&discontinuous_ends(states, Axis::Y));
     let (x, y) = (neighbour_spans(floor, panel, Axis::X), neighbour_spans(floor, panel, Axis::Y));
     let by_neighbours = if (x - y).abs() <= 1e-9 { std::cmp::Ordering::Equal } else { x.total_cmp(&y) };
     match by_ends.then(by_neighbours) {
@@ -172,19 +200,31 @@ fn settle_panel(
     queries: &mut Vec<Query>,
 ) -> Settled {
     let spans = effective_spans(panel, criteria);
-    let (short_along, by_x) = short_axis(floor, panel, spans, most, tolerance_m);
+    let states = own_states(floor, panel);
+    let (short_along, by_x) = short_axis(floor, panel, &states, spans, most, tolerance_m);
     let (lx_m, ly_m) = (spans[0].min(spans[1]), spans[0].max(spans[1]));
-    if let Some(side) =
-        Side::ALL.into_iter().find(|side| panel.edge(*side).state == EdgeState::PartlyContinuous)
-    {
-        return Err(format!(
-            "its {} edge is partly continuous, which is not designed yet",
-            panel.side_word(side)
-        ));
+    if panel.spanning == Spanning::Cantilever {
+        let Some(root) = Side::ALL.into_iter().find(|side| states[side.index()] == EdgeState::Continuous)
+        else {
+            return Err("a cantilever with no edge to stand out from".to_owned());
+        };
+        if panel.line_loads.iter().any(|wall| wall.along == root.span_axis()) {
+            return Err("a cantilever with a wall along its span: not covered by a metre strip".to_owned());
+        }
+        let main_span = if root.span_axis() == short_along { Span::Short } else { Span::Long };
+        return Ok(Basis {
+            short_along,
+            lx_m,
+            ly_m,
+            action: Action::Cantilever,
+            main_span,
+            case: None,
+            states,
+        });
     }
     if let Some(axis) = one_way_axis(panel)? {
         let main_span = if axis == short_along { Span::Short } else { Span::Long };
-        return Ok(Basis { short_along, lx_m, ly_m, action: Action::OneWay, main_span, case: None });
+        return Ok(Basis { short_along, lx_m, ly_m, action: Action::OneWay, main_span, case: None, states });
     }
     if by_x {
         let text =
@@ -192,10 +232,10 @@ fn settle_panel(
         queries.push(Query::panel(Severity::Note, &panel.mark, None, text, ""));
     }
     let case = PanelCase::new(
-        discontinuous_ends(panel, short_along),
-        discontinuous_ends(panel, short_along.across()),
+        discontinuous_ends(&states, short_along),
+        discontinuous_ends(&states, short_along.across()),
     );
-    let four_discontinuous = case == PanelCase::new(2, 2);
+    let four_discontinuous = panel.edges.iter().all(|edge| edge.state == EdgeState::Discontinuous);
     let action = if panel.corners == Corners::FreeToLift && four_discontinuous {
         Action::TwoWaySimplySupported
     } else {
@@ -210,5 +250,5 @@ fn settle_panel(
             "hold the corners down, or state all four edges discontinuous",
         ));
     }
-    Ok(Basis { short_along, lx_m, ly_m, action, main_span: Span::Short, case: Some(case) })
+    Ok(Basis { short_along, lx_m, ly_m, action, main_span: Span::Short, case: Some(case), states })
 }

@@ -110,7 +110,9 @@ impl BottomTask<'_> {
     fn end_checks(&self, span: Span, trial: &Trial, outer_mm: f64, give: &mut dyn FnMut(Check)) {
         for side in self.fixed.basis.axis_of(span).end_sides() {
             let Some(v_kn_m) = self.fixed.side_shear_kn_m[side.index()] else { continue };
-            if self.panel.edge(side).state != EdgeState::Discontinuous {
+            // A back-span's edge against a cantilever is continuous here: its bars run on.
+            let state = self.panel.edge(side).state;
+            if !matches!(state, EdgeState::Discontinuous | EdgeState::PartlyContinuous) {
                 continue;
             }
             let end = self.end(trial, side, outer_mm);
@@ -129,18 +131,7 @@ impl BottomTask<'_> {
 
     /// Working and check of deflection, on the span that carries.
     pub(crate) fn deflection(&self, trial: &Trial) -> (DeflectionWorking, Check) {
-        let criteria = self.criteria;
-        let moment = trial.moment_knm_m.unwrap_or(0.0);
-        // Where K exceeds K' there is no steel that would do: its stress is taken as at yield.
-        let bending = trial.flexure(criteria).and_then(|f| f.as_mm2_m).unwrap_or(trial.as_provided());
-        let fs_n_mm2 = deflection::service_stress(criteria.fy_n_mm2, bending, trial.as_provided());
-        let modification_factor = deflection::modification_factor(fs_n_mm2, moment, trial.d_mm).max(0.01);
-        let basic = self.fixed.basic_span_depth;
-        let actual = self.fixed.basis.length_m(self.fixed.basis.main_span) * 1000.0 / trial.d_mm;
-        let allowed = basic * modification_factor;
-        let check =
-            Check::at_most(CheckKind::Deflection, trial.at, "3.5.7, 3.4.6", actual, allowed, "span/depth");
-        (DeflectionWorking { basic, fs_n_mm2, modification_factor }, check)
+        deflection_check(self.criteria, self.fixed, trial)
     }
 
     /// Every check that a span's bottom bars decide.
@@ -209,4 +200,23 @@ pub(crate) fn shear_check(criteria: &Criteria, at: Place, v_kn_m: f64, steel: f6
     let greatest = shear::greatest_stress(criteria.fcu_n_mm2);
     let (clause, limit) = if vc <= greatest { ("3.5.5.3, Table 3.8", vc) } else { ("3.5.5.2", greatest) };
     Check::at_most(CheckKind::Shear, at, clause, v, limit, "N/mm2")
+}
+
+/// Working and check of deflection at the section that carries (midspan, or a cantilever's root).
+pub(crate) fn deflection_check(
+    criteria: &Criteria,
+    fixed: &Fixed,
+    trial: &Trial,
+) -> (DeflectionWorking, Check) {
+    let moment = trial.moment_knm_m.unwrap_or(0.0);
+    // Where K exceeds K' there is no steel that would do: its stress is taken as at yield.
+    let bending = trial.flexure(criteria).and_then(|f| f.as_mm2_m).unwrap_or(trial.as_provided());
+    let fs_n_mm2 = deflection::service_stress(criteria.fy_n_mm2, bending, trial.as_provided());
+    let modification_factor = deflection::modification_factor(fs_n_mm2, moment, trial.d_mm).max(0.01);
+    let basic = fixed.basic_span_depth;
+    let actual = fixed.basis.length_m(fixed.basis.main_span) * 1000.0 / trial.d_mm;
+    let allowed = basic * modification_factor;
+    let check =
+        Check::at_most(CheckKind::Deflection, trial.at, "3.5.7, 3.4.6", actual, allowed, "span/depth");
+    (DeflectionWorking { basic, fs_n_mm2, modification_factor }, check)
 }

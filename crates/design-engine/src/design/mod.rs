@@ -3,11 +3,14 @@
 mod balance;
 mod basis;
 mod bottom;
+mod corners;
 mod fixed;
+mod openings;
 mod panel;
 mod queries;
 mod regions;
 mod section;
+mod side_loads;
 mod strips;
 mod thickness;
 mod top;
@@ -197,16 +200,27 @@ impl<'a> Stage<'a> {
                     let support =
                         over.filter_map(|id| t1[id.0].as_ref()).map(|s| s.bars.bar_mm).fold(0.0, f64::max);
                     let bottom = match (edge.state, bottoms[index], self.view.fixed(PanelId(index))) {
-                        (EdgeState::Discontinuous, Some(bars), Some(fixed)) => {
+                        (EdgeState::Discontinuous | EdgeState::PartlyContinuous, Some(bars), Some(fixed)) => {
                             bars[fixed.basis.span_along(axis) as usize].bar_mm
                         }
                         _ => 0.0,
                     };
                     support.max(bottom)
                 };
-                axis.end_sides().map(edge).into_iter().fold(0.0, f64::max)
+                axis.end_sides().map(edge).into_iter().fold(self.outer_distribution(index), f64::max)
             })
             .collect()
+    }
+
+    /// Size of a cantilever's distribution bars where they are the outer layer, mm; 0 elsewhere.
+    fn outer_distribution(&self, index: usize) -> f64 {
+        let Some(fixed) = self.view.fixed(PanelId(index)) else { return 0.0 };
+        let basis = fixed.basis;
+        if basis.action != Action::Cantilever || basis.axis_of(basis.main_span) == self.t1_axes[index] {
+            return 0.0;
+        }
+        panel::distribution(&self.view, fixed, self.t1_axes[index], self.candidates, &[])
+            .map_or(0.0, |(bars, _)| bars.bar_mm)
     }
 
     fn panel(
@@ -226,17 +240,16 @@ impl<'a> Stage<'a> {
             loads: loads::build_up(panel.thickness_mm, &panel.loads, self.view.criteria),
             sections: Vec::new(),
             checks: Vec::new(),
+            corners: Vec::new(),
+            openings: Vec::new(),
+            side_loads: side_loads::side_loads(&self.view, id, &|s| self.moment(s)),
+            total_ultimate_kn: side_loads::total_ultimate_kn(&self.view, id),
             deflection: None,
             governing: None,
             thickness_governed_by: None,
             least_thickness_mm: None,
         };
         let moments = |s: SupportId| self.moment(s);
-        let (Some(task), Some(bottom)) =
-            (bottom_task(&self.view, id, self.t1_axes[id.0], self.candidates, &moments), bottoms[id.0])
-        else {
-            return design;
-        };
         let supports: Vec<SupportBars<'_>> = supports_of(&self.view, id)
             .into_iter()
             .filter_map(|(side, support)| {
@@ -245,7 +258,15 @@ impl<'a> Stage<'a> {
                 Some(SupportBars { task, id: support, side, layer: self.layer_of(support), bars })
             })
             .collect();
-        let assembled = panel::assemble(&self.view, id, &task, bottom, &supports, &moments);
+        let cantilever = design.basis.is_some_and(|basis| basis.action == Action::Cantilever);
+        let assembled = if cantilever {
+            panel::assemble_cantilever(&self.view, id, self.t1_axes[id.0], self.candidates, &supports)
+        } else {
+            let task = bottom_task(&self.view, id, self.t1_axes[id.0], self.candidates, &moments);
+            task.zip(bottoms[id.0])
+                .map(|(task, bottom)| panel::assemble(&self.view, id, &task, bottom, &supports, &moments))
+        };
+        let Some(assembled) = assembled else { return design };
         let crossing = |s: SupportId| self.crossing_steel(s, bottoms);
         let in_place = PanelInPlace {
             view: self.view,
@@ -261,6 +282,12 @@ impl<'a> Stage<'a> {
         design.thickness_governed_by = in_place.governed_by(&assembled.checks);
         if assembled.checks.iter().any(|check| check.kind == CheckKind::Deflection && !check.ok) {
             design.least_thickness_mm = in_place.least_that_passes();
+        }
+        if let Some(basis) = &design.basis {
+            let View { floor, criteria, .. } = self.view;
+            design.corners =
+                corners::corners(floor, criteria, panel, basis, &assembled.sections, &supports, designs);
+            design.openings = openings::openings(panel, basis, &assembled.sections, designs);
         }
         design.sections = assembled.sections;
         design.checks = assembled.checks;

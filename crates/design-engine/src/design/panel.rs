@@ -1,15 +1,19 @@
 //! A panel's sections and checks put together.
 
 use super::balance::{SupportMoment, balanced_midspans};
-use super::bottom::{BottomBarsChosen, BottomTask};
-use super::section::Trial;
+use super::bottom::{BottomBarsChosen, BottomTask, deflection_check};
+use super::fixed::Fixed;
+use super::section::{Trial, worst_ratio};
 use super::top::TopTask;
 use super::view::View;
 use crate::bs8110::cover::{DurabilityCover, durability, fire};
+use crate::bs8110::flexure::K_LIMIT;
+use crate::bs8110::spacing::BETA_B_MIDSPAN;
 use crate::check::{Check, CheckKind, Place};
+use crate::choose::{Score, best, cost};
 use crate::criteria::Criteria;
 use crate::floor::{Axis, BarChoice, EdgeState, Layer, PanelId, Side, Span, SupportId, SupportSide};
-use crate::result::{DeflectionWorking, Section};
+use crate::result::{Action, DeflectionWorking, Section};
 
 /// Everything designed of one panel.
 pub(crate) struct Assembled {
@@ -49,7 +53,7 @@ pub(crate) fn bottom_task<'a>(
     candidates: &'a [BarChoice],
     moments: &dyn Fn(SupportId) -> Option<SupportMoment>,
 ) -> Option<BottomTask<'a>> {
-    let fixed = view.fixed(id)?;
+    let fixed = view.fixed(id).filter(|fixed| fixed.basis.action != Action::Cantilever)?;
     let balanced = balanced_midspans(view, id, moments);
     let moments = [Span::Short, Span::Long].map(|span| {
         fixed.midspan_coefficient[span as usize].map(|_| fixed.midspan(span).max(balanced[span as usize]))
@@ -91,23 +95,116 @@ pub(crate) fn assemble(
         section.moment_balanced_knm_m = table.map(|_| balanced[span as usize]);
         sections.push(section);
     }
-    for support in supports {
-        let at = SupportSide { panel: id, side: support.side };
-        let trial = support.task.seen_from(at, support.bars, &mut |check| checks.push(check));
-        let mut section = section(&trial, view.criteria, support.side.span_axis());
-        section.support = Some(support.id);
-        section.layer = support.layer;
-        section.coefficient = task.fixed.side_coefficient[support.side.index()];
-        section.moment_from_coefficient_knm_m = section.coefficient.map(|c| c * task.fixed.unit_moment_knm_m);
-        section.moment_balanced_knm_m = section.moment_knm_m;
-        sections.push(section);
-    }
+    support_sections(view.criteria, id, task.fixed, supports, &mut sections, &mut checks);
     hogging_midspans(task, balanced, supports, &mut sections, &mut checks);
-    panel_checks(task, &mut checks);
+    uplift_checks(view, id, task.fixed, supports, &mut checks);
+    panel_checks(view.criteria, task.fixed, &mut checks);
     let main = task.fixed.basis.main_span;
     let outer_mm = if main == outer_span { 0.0 } else { bottom[outer_span as usize].bar_mm };
     let (deflection, _) = task.deflection(&task.trial(main, bottom[main as usize], outer_mm));
     Assembled { sections, checks, deflection }
+}
+
+/// Sections and checks at a panel's supports.
+fn support_sections(
+    criteria: &Criteria,
+    id: PanelId,
+    fixed: &Fixed,
+    supports: &[SupportBars<'_>],
+    sections: &mut Vec<Section>,
+    checks: &mut Vec<Check>,
+) {
+    for support in supports {
+        let at = SupportSide { panel: id, side: support.side };
+        let trial = support.task.seen_from(at, support.bars, &mut |check| checks.push(check));
+        let mut section = section(&trial, criteria, support.side.span_axis());
+        section.support = Some(support.id);
+        section.layer = support.layer;
+        section.coefficient = fixed.side_coefficient[support.side.index()];
+        section.moment_from_coefficient_knm_m = section.coefficient.map(|_| fixed.side(support.side));
+        section.moment_balanced_knm_m = section.moment_knm_m;
+        sections.push(section);
+    }
+}
+
+/// Sections and checks of a cantilever: its root, and distribution bars in the other top layer.
+pub(crate) fn assemble_cantilever(
+    view: &View<'_>,
+    id: PanelId,
+    t1_axis: Axis,
+    candidates: &[BarChoice],
+    supports: &[SupportBars<'_>],
+) -> Option<Assembled> {
+    let fixed = view.fixed(id)?;
+    let (mut sections, mut checks) = (Vec::new(), Vec::new());
+    let (bars, trial) = distribution(view, fixed, t1_axis, candidates, supports)?;
+    trial.checks(view.criteria, &mut |check| checks.push(check));
+    let axis = fixed.basis.axis_of(fixed.basis.main_span.other());
+    let mut spread = section(&trial, view.criteria, axis);
+    spread.layer = if axis == t1_axis { Layer::T1 } else { Layer::T2 };
+    spread.bars = bars;
+    sections.push(spread);
+    support_sections(view.criteria, id, fixed, supports, &mut sections, &mut checks);
+    panel_checks(view.criteria, fixed, &mut checks);
+    let root = supports.first()?;
+    let root = root.task.trial(Place::Side(root.side), root.bars);
+    Some(Assembled { sections, checks, deflection: deflection_check(view.criteria, fixed, &root).0 })
+}
+
+/// Distribution bars of a cantilever: minimum steel along its root, least mass.
+pub(crate) fn distribution(
+    view: &View<'_>,
+    fixed: &Fixed,
+    t1_axis: Axis,
+    candidates: &[BarChoice],
+    supports: &[SupportBars<'_>],
+) -> Option<(BarChoice, Trial)> {
+    let criteria = view.criteria;
+    let span = fixed.basis.main_span.other();
+    let outermost = fixed.basis.axis_of(span) == t1_axis;
+    let root_bar = supports.iter().map(|support| support.bars.bar_mm).fold(0.0, f64::max);
+    let cover = criteria.top_cover_mm + if outermost { 0.0 } else { root_bar };
+    let trial = |bars: BarChoice| Trial {
+        at: if span == Span::Short { Place::ShortMidspan } else { Place::LongMidspan },
+        bars,
+        stated: false,
+        moment_knm_m: None,
+        floor_steel_mm2_m: 0.0,
+        d_mm: (fixed.thickness_mm - cover - bars.bar_mm / 2.0).max(1.0),
+        h_mm: fixed.thickness_mm,
+        cover_to_bars_mm: cover,
+        nominal_cover_mm: criteria.top_cover_mm,
+        k_limit: K_LIMIT,
+        beta_b: BETA_B_MIDSPAN,
+    };
+    let scored = candidates.iter().map(|bars| {
+        let trial = trial(*bars);
+        let worst_ratio = worst_ratio(|give| trial.checks(criteria, give));
+        (*bars, Score { worst_ratio, cost_kg: cost(trial.as_provided(), 1.0, 1.0) })
+    });
+    best(scored).map(|(bars, _)| (bars, trial(bars)))
+}
+
+/// Where a cantilever stands out from a panel: its moment against what the panel's own dead load holds down at
+/// the far support, both as reactions there (statics).
+fn uplift_checks(
+    view: &View<'_>,
+    id: PanelId,
+    fixed: &Fixed,
+    supports: &[SupportBars<'_>],
+    checks: &mut Vec<Check>,
+) {
+    for support in supports {
+        let Some(cantilever) = support.task.cantilever().filter(|side| side.at.panel != id) else { continue };
+        let l_m = fixed.basis.length_m(fixed.basis.span_along(support.side.span_axis()));
+        let lifts = cantilever.fixed.side(cantilever.at.side) / l_m;
+        let holds = fixed.loads.dead_kn_m2 * l_m / 2.0;
+        let far = support.side.opposite();
+        // A span that goes on past the far support is held down by its own hogging there.
+        if view.floor.panel(id).edge(far).state == EdgeState::Discontinuous {
+            checks.push(Check::at_most(CheckKind::Uplift, Place::Side(far), "statics", lifts, holds, "kN/m"));
+        }
+    }
 }
 
 fn section(trial: &Trial, criteria: &Criteria, bars_along: Axis) -> Section {
@@ -166,8 +263,7 @@ fn hogging_midspans(
 }
 
 /// Cover and thickness for durability and fire.
-fn panel_checks(task: &BottomTask<'_>, checks: &mut Vec<Check>) {
-    let criteria = task.criteria;
+fn panel_checks(criteria: &Criteria, fixed: &Fixed, checks: &mut Vec<Check>) {
     for (at, cover) in
         [(Place::BottomFace, criteria.bottom_cover_mm), (Place::TopFace, criteria.top_cover_mm)]
     {
@@ -185,8 +281,8 @@ fn panel_checks(task: &BottomTask<'_>, checks: &mut Vec<Check>) {
             ),
         });
     }
-    let short_ends = task.fixed.basis.short_along.end_sides();
-    let continuous = short_ends.iter().all(|side| task.panel.edge(*side).state == EdgeState::Continuous);
+    let short_ends = fixed.basis.short_along.end_sides();
+    let continuous = short_ends.iter().all(|side| fixed.basis.state(*side) == EdgeState::Continuous);
     let (cover, thickness) = fire(criteria.fire_resistance_h, continuous);
     checks.push(Check::at_most(
         CheckKind::CoverForFire,
@@ -201,7 +297,7 @@ fn panel_checks(task: &BottomTask<'_>, checks: &mut Vec<Check>) {
         Place::Panel,
         "figure 3.2",
         thickness,
-        task.fixed.thickness_mm,
+        fixed.thickness_mm,
         "mm",
     ));
 }

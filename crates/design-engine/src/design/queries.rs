@@ -42,9 +42,9 @@ fn of_panel(floor: &Floor, design: &PanelDesign, queries: &mut Vec<Query>) {
     failed.sort_unstable();
     failed.dedup();
     if !failed.is_empty() {
-        let least = design.least_thickness_mm.map_or(String::new(), |h| {
-            format!("; the least thickness that passes bending, shear, deflection and bond is {h} mm")
-        });
+        let least = design
+            .least_thickness_mm
+            .map_or(String::new(), |h| format!("; the least thickness at which deflection passes is {h} mm"));
         say(
             Severity::Warning,
             format!("fails {}{least}", failed.join(", ")),
@@ -61,12 +61,16 @@ fn of_panel(floor: &Floor, design: &PanelDesign, queries: &mut Vec<Query>) {
             say(Severity::Note, text, "check deflection after finishes by other means (3.4.6.4)");
         }
     }
-    let ratio = basis.span_ratio();
-    if basis.action == Action::OneWay && basis.main_span == Span::Short && (2.0..=2.2).contains(&ratio) {
-        let text =
-            format!("ly/lx = {ratio:.2}, just over 2: designed one-way; some load still goes the long way");
-        say(Severity::Note, text, "");
+    let walls: f64 = panel.line_loads.iter().map(|wall| wall.load_kn_m * wall.length_m()).sum();
+    let dead = design.loads.dead_kn_m2 * panel.area_m2();
+    if walls > 0.1 * dead && basis.case.is_some() {
+        let text = format!(
+            "walls weigh {walls:.1} kN, {:.0} % of the panel's dead load, over 10 %: taken as an equivalent uniform load",
+            100.0 * walls / dead
+        );
+        say(Severity::Warning, text, "check the panel by plate analysis, or put a beam under the wall");
     }
+    of_openings(design, &mut say);
     for span in [Span::Short, Span::Long] {
         let at = if span == Span::Short { Place::ShortMidspan } else { Place::LongMidspan };
         let hogs =
@@ -82,6 +86,33 @@ fn of_panel(floor: &Floor, design: &PanelDesign, queries: &mut Vec<Query>) {
                 "the neighbours are too unlike for the coefficient method to be relied on (3.5.3.5)",
             );
         }
+    }
+}
+
+fn of_openings(design: &PanelDesign, say: &mut dyn FnMut(Severity, String, &str)) {
+    for (number, opening) in (1..).zip(&design.openings) {
+        let [x, y] = opening.opening.widths_m;
+        let name = format!("opening {number}, {x:.2} x {y:.2} m");
+        if opening.over_quarter_of_span || opening.within_d_of_support {
+            let why = if opening.over_quarter_of_span {
+                "wider than a quarter of a span"
+            } else {
+                "within d of a support"
+            };
+            say(
+                Severity::Warning,
+                format!("{name}: {why}: the coefficient method does not cover it"),
+                "analyse the panel with its opening, or frame the opening with beams",
+            );
+        }
+        let text = if opening.displaced {
+            format!("{name}: bars are moved aside, none cut")
+        } else {
+            format!(
+                "{name}: bars are cut; half of each layer's cut steel goes on each side, with diagonal bars at the corners"
+            )
+        };
+        say(Severity::Note, text, "");
     }
 }
 

@@ -2,12 +2,13 @@
 
 use super::balance::{SupportMoment, support_moment};
 use super::fixed::fix;
-use super::panel::{SupportBars, assemble, bottom_task, governing, supports_of};
+use super::panel::{SupportBars, assemble, assemble_cantilever, bottom_task, governing, supports_of};
 use super::strips::StripPlace;
 use super::top::TopTask;
 use super::view::View;
 use crate::check::{Check, CheckKind};
 use crate::floor::{Axis, BarChoice, Layer, PanelId, SupportId};
+use crate::result::Action;
 
 /// Step between thicknesses tried, mm.
 const STEP_MM: f64 = 5.0;
@@ -42,10 +43,6 @@ impl PanelInPlace<'_> {
         let moments = |id: SupportId| {
             own.iter().find(|(known, _)| *known == id).map_or_else(|| self.moments[id.0], |(_, m)| *m)
         };
-        let Some(task) = bottom_task(&view, self.id, self.t1_axis, self.candidates, &moments) else {
-            return Vec::new();
-        };
-        let bottom = task.choose();
         let supports: Vec<SupportBars<'_>> = supports_of(&view, self.id)
             .into_iter()
             .filter_map(|(side, id)| {
@@ -57,7 +54,13 @@ impl PanelInPlace<'_> {
                 Some(SupportBars { task, id, side, layer, bars })
             })
             .collect();
-        assemble(&view, self.id, &task, bottom, &supports, &moments).checks
+        let assembled = if fixed.basis.action == Action::Cantilever {
+            assemble_cantilever(&view, self.id, self.t1_axis, self.candidates, &supports)
+        } else {
+            let task = bottom_task(&view, self.id, self.t1_axis, self.candidates, &moments);
+            task.map(|task| assemble(&view, self.id, &task, task.choose(), &supports, &moments))
+        };
+        assembled.map_or_else(Vec::new, |assembled| assembled.checks)
     }
 
     /// The check that fails first when the panel is made thinner in steps of 5 mm, bars chosen again.
@@ -79,13 +82,13 @@ impl PanelInPlace<'_> {
         None
     }
 
-    /// Least thickness in whole 5 mm above the present one at which bending, shear, deflection and bond pass.
+    /// Least thickness in whole 5 mm above the present one at which deflection passes.
     pub(crate) fn least_that_passes(&self) -> Option<f64> {
         let mut thickness =
             ((self.view.fixed(self.id)?.thickness_mm + 1e-6) / STEP_MM).floor() * STEP_MM + STEP_MM;
         while thickness <= GREATEST_MM {
             let checks = self.checks_at(thickness);
-            if checks.iter().all(|check| check.ok || !check.kind.may_govern_while_passing()) {
+            if checks.iter().all(|check| check.ok || check.kind != CheckKind::Deflection) {
                 return Some(thickness);
             }
             thickness += STEP_MM;

@@ -1,7 +1,7 @@
 //! Top bars over a support: one choice that serves both panels.
 
 use super::balance::{SupportMoment, balanced_midspans, new_side_moments};
-use super::bottom::shear_check;
+use super::bottom::{deflection_check, shear_check};
 use super::fixed::Fixed;
 use super::section::{Trial, worst_ratio};
 use super::view::View;
@@ -17,13 +17,19 @@ const RISE_THAT_LENGTHENS: f64 = 1.10;
 /// Spans within this of each other allow alternate reversed bars.
 const REVERSED_SPAN_VARIATION: f64 = 0.15;
 
+/// Distance from the root at which a back-span stops hogging under the cantilever's moment and its own 1.0 gk, m: x =
+/// 2 M/(g l) (statics). Not less than l: it hogs throughout and its far support lifts.
+pub(crate) fn back_span_contraflexure(cantilever_knm_m: f64, back_span: &Fixed, l_m: f64) -> f64 {
+    2.0 * cantilever_knm_m / (back_span.loads.dead_kn_m2 * l_m)
+}
+
 /// One side of a support being designed.
 #[derive(Clone, Copy)]
-struct SideTask<'a> {
-    at: SupportSide,
-    fixed: &'a Fixed,
+pub(crate) struct SideTask<'a> {
+    pub(crate) at: SupportSide,
+    pub(crate) fixed: &'a Fixed,
     /// Span across the support, m.
-    l_m: f64,
+    pub(crate) l_m: f64,
     /// Moments of the panel's span after balancing: at this support, at the far end, midspan.
     near_knm_m: f64,
     far_knm_m: f64,
@@ -117,6 +123,9 @@ impl<'a> TopTask<'a> {
         if let (Some(v), SupportKind::Hogging) = (shear, self.support.kind) {
             give(shear_check(self.view.criteria, place, v, trial.as_provided(), trial.d_mm));
         }
+        if side.fixed.basis.action == Action::Cantilever {
+            give(deflection_check(self.view.criteria, side.fixed, &trial).1);
+        }
     }
 
     /// Reach past the face into each panel, and whether alternate bars are reversed.
@@ -126,6 +135,21 @@ impl<'a> TopTask<'a> {
         let simplified = top_extents(l_mm, bars.bar_mm);
         let mut reaches: Vec<Reach> =
             self.sides.iter().map(|side| self.reach(side, &trial, simplified)).collect();
+        if let Some(cantilever) = self.cantilever() {
+            // Half the bars stop short in the back-span, where the rest still meet the rules; none in the cantilever.
+            let may_stop = trial.alternate_bars_may_stop(self.view.criteria);
+            for (side, reach) in self.sides.iter().zip(&mut reaches) {
+                *reach = if side.at == cantilever.at {
+                    self.whole_cantilever(side)
+                } else {
+                    self.reach_in_back_span(side, cantilever, &trial)
+                };
+                if !may_stop {
+                    reach.short = reach.long;
+                }
+            }
+            return (reaches, false);
+        }
         let least_l = self.sides.iter().map(|side| side.l_m).fold(f64::INFINITY, f64::min) * 1000.0;
         let reversed = self.view.criteria.top_bars == TopBars::AlternateReversed
             && self.sides.len() == 2
@@ -168,6 +192,40 @@ impl<'a> TopTask<'a> {
         Reach {
             long: round_up_50(simplified.1.max(past - to_face)).min(run_through.long),
             short: round_up_50(simplified.0.max(past / 2.0 - to_face)).min(run_through.long),
+            from_contraflexure: true,
+        }
+    }
+
+    /// The side that is a cantilever, if one is.
+    pub(crate) fn cantilever(&self) -> Option<&SideTask<'a>> {
+        self.sides.iter().find(|side| side.fixed.basis.action == Action::Cantilever)
+    }
+
+    /// Every bar reaches the tip, less the cover.
+    fn whole_cantilever(&self, side: &SideTask<'_>) -> Reach {
+        let to_tip = side.l_m * 1000.0 - self.support.width_mm / 2.0 - self.view.criteria.top_cover_mm;
+        let long = (to_tip / 5.0).floor() * 5.0;
+        Reach { long, short: long, from_contraflexure: false }
+    }
+
+    /// Bars of a cantilever of length k in its back-span of length l, from the face: all to max(0.75 k, 0.15 l, 45
+    /// sizes), half to max(1.5 k, 0.3 l), and to max(d, 12 sizes) past the contraflexure under the cantilever fully
+    /// loaded and the back-span with 1.0 gk. No contraflexure: all run the whole back-span.
+    fn reach_in_back_span(&self, side: &SideTask<'_>, cantilever: &SideTask<'_>, trial: &Trial) -> Reach {
+        let (k, l) = (cantilever.l_m * 1000.0, side.l_m * 1000.0);
+        let bar = trial.bars.bar_mm;
+        let all = (0.75 * k).max(0.15 * l).max(45.0 * bar);
+        let whole = round_up_50(side.clear_span_mm + self.support.width_mm / 2.0);
+        let x0 =
+            1000.0 * back_span_contraflexure(cantilever.fixed.side(cantilever.at.side), side.fixed, side.l_m);
+        if x0 >= l {
+            return Reach { long: whole, short: whole, from_contraflexure: true };
+        }
+        let past = x0 + trial.d_mm.max(12.0 * bar) - self.support.width_mm / 2.0;
+        let half = (1.5 * k).max(0.3 * l).max(past).max(all);
+        Reach {
+            long: round_up_50(half).min(whole),
+            short: round_up_50(all).min(whole),
             from_contraflexure: true,
         }
     }

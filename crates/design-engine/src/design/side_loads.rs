@@ -1,0 +1,74 @@
+//! Loads on the supports along a panel's sides (3.5.3.7).
+
+use super::balance::{SupportMoment, new_side_moments};
+use super::fixed::Fixed;
+use super::view::View;
+use crate::bs8110::coefficients::{PanelCase, shear};
+use crate::floor::{EdgeState, PanelId, Side, SupportId};
+use crate::result::{Action, SideLoad};
+
+/// Share of a two-way panel's edge that is loaded (figure 3.10).
+const TWO_WAY_SHARE: f64 = 0.75;
+
+/// Weight of the walls on a panel spread over it, kN/m2, characteristic.
+fn walls_kn_m2(view: &View<'_>, id: PanelId) -> f64 {
+    let panel = view.floor.panel(id);
+    panel.line_loads.iter().map(|wall| wall.load_kn_m * wall.length_m()).sum::<f64>() / panel.area_m2()
+}
+
+/// Ultimate load of a designed panel, walls in, on its effective spans, kN; 0 where it is not designed.
+pub(crate) fn total_ultimate_kn(view: &View<'_>, id: PanelId) -> f64 {
+    view.fixed(id).map_or(0.0, |fixed| {
+        let walls = view.criteria.dead_load_factor * walls_kn_m2(view, id);
+        (fixed.loads.ultimate_kn_m2 + walls) * fixed.basis.lx_m * fixed.basis.ly_m
+    })
+}
+
+/// Loads on the four sides. Two-way: `beta_v` n lx by the panel's own case (free corners: case 9), the true weight of
+/// walls in n. One-way: statics of the span fully loaded with its final support moments, so that the two ends carry
+/// the whole load. Cantilever: all of it at the root.
+pub(crate) fn side_loads(
+    view: &View<'_>,
+    id: PanelId,
+    moments: &dyn Fn(SupportId) -> Option<SupportMoment>,
+) -> [Option<SideLoad>; 4] {
+    let Some(fixed) = view.fixed(id) else { return [None; 4] };
+    let dead = fixed.loads.dead_kn_m2 + walls_kn_m2(view, id);
+    let imposed = fixed.loads.imposed_kn_m2;
+    let n = view.criteria.dead_load_factor * dead + view.criteria.imposed_load_factor * imposed;
+    let share = if fixed.basis.case.is_some() { TWO_WAY_SHARE } else { 1.0 };
+    lengths(view, id, fixed, n, moments).map(|length| {
+        length.map(|length| SideLoad {
+            dead_kn_m: dead * length,
+            imposed_kn_m: imposed * length,
+            ultimate_kn_m: n * length,
+            loaded_share: share,
+        })
+    })
+}
+
+/// Length of slab that each side carries, m: load per metre of side over load per square metre.
+fn lengths(
+    view: &View<'_>,
+    id: PanelId,
+    fixed: &Fixed,
+    n: f64,
+    moments: &dyn Fn(SupportId) -> Option<SupportMoment>,
+) -> [Option<f64>; 4] {
+    let basis = &fixed.basis;
+    let l = basis.length_m(basis.main_span);
+    let ends = basis.axis_of(basis.main_span).end_sides();
+    Side::ALL.map(|side| match (basis.action, basis.case) {
+        (Action::Cantilever, _) => (basis.state(side) == EdgeState::Continuous).then_some(l),
+        (Action::OneWay, _) => ends.contains(&side).then(|| {
+            let at = |side: Side| new_side_moments(view, id, side, moments).1;
+            l / 2.0 + (at(side) - at(side.opposite())) / (l * n)
+        }),
+        (_, case) => {
+            let case = case.unwrap_or(PanelCase::new(2, 2));
+            let continuous = basis.state(side) == EdgeState::Continuous;
+            let long_edge = side.span_axis() == basis.short_along;
+            shear(case, basis.span_ratio()).edge(long_edge, continuous).map(|beta| beta * basis.lx_m)
+        }
+    })
+}
