@@ -58,7 +58,9 @@ pub(crate) fn support_moment(view: &View<'_>, support: &Support) -> Option<Suppo
     result.difference_pct = Some(100.0 * difference(m_near, m_far));
     if [near_fixed, far_fixed].iter().any(|f| f.basis.action == Action::Cantilever) {
         // A cantilever's moment is neither balanced nor reduced; the back-span's own is the least there.
+        // The likeness that 3.5.3.5 asks of neighbours is not asked of it.
         result.moment_knm_m = Some(m_near.max(m_far));
+        (result.load_ratio, result.span_ratio) = (None, None);
         return Some(result);
     }
     let one_way = |f: &Fixed| f.basis.action == Action::OneWay;

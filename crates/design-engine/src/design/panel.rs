@@ -120,7 +120,9 @@ fn support_sections(
         let mut section = section(&trial, criteria, support.side.span_axis());
         section.support = Some(support.id);
         section.layer = support.layer;
-        section.coefficient = fixed.side_coefficient[support.side.index()];
+        // Crossing bars claim no moment, whatever the edge has elsewhere.
+        section.coefficient =
+            fixed.side_coefficient[support.side.index()].filter(|_| trial.moment_knm_m.is_some());
         section.moment_from_coefficient_knm_m = section.coefficient.map(|_| fixed.side(support.side));
         section.moment_balanced_knm_m = section.moment_knm_m;
         sections.push(section);

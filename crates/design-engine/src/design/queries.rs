@@ -2,7 +2,7 @@
 
 use crate::check::Place;
 use crate::criteria::{Coefficients, Criteria, EdgeStrips};
-use crate::floor::{Corners, EdgeState, Floor, PanelId, Side, Span, Support, SupportKind};
+use crate::floor::{Corners, EdgeState, Floor, PanelId, Side, Span, SupportKind};
 use crate::query::{Query, Severity, Subject};
 use crate::result::{Action, PanelDesign, SupportDesign};
 
@@ -118,7 +118,6 @@ fn of_openings(design: &PanelDesign, say: &mut dyn FnMut(Severity, String, &str)
 
 fn of_support(floor: &Floor, panels: &[PanelDesign], design: &SupportDesign, queries: &mut Vec<Query>) {
     let support = floor.support(design.support);
-    let name = support_words(floor, support);
     let subject = support.name.clone().map_or_else(
         || Subject::Edge { mark: floor.panel(support.near.panel).mark.clone(), side: support.near.side },
         Subject::Support,
@@ -131,7 +130,7 @@ fn of_support(floor: &Floor, panels: &[PanelDesign], design: &SupportDesign, que
             let mark = &floor.panel(side.panel).mark;
             warn(
                 format!(
-                    "{name}: {mark} is not designed, so this support is not balanced: its bars come from the other panel alone"
+                    "{mark} is not designed, so this support is not balanced: its bars come from the other panel alone"
                 ),
                 "design the support again with both panels",
             );
@@ -145,7 +144,7 @@ fn of_support(floor: &Floor, panels: &[PanelDesign], design: &SupportDesign, que
         if let Some(ratio) = ratio.filter(|ratio| *ratio < LEAST_NEIGHBOUR_RATIO) {
             warn(
                 format!(
-                    "{name}: the {what} of its two panels are in the ratio {ratio:.2}, under 0.5: not approximately the same (3.5.3.5)"
+                    "the {what} of its two panels are in the ratio {ratio:.2}, under 0.5: not approximately the same (3.5.3.5)"
                 ),
                 "check these panels by analysis",
             );
@@ -157,25 +156,12 @@ fn of_support(floor: &Floor, panels: &[PanelDesign], design: &SupportDesign, que
             if moment > GREATEST_RISE * table && table > 0.0 {
                 let mark = &floor.panel(side.panel).mark;
                 warn(
-                    format!(
-                        "{name}: the new moment {moment:.1} kNm/m is over 1.5 times the {table:.1} of {mark}"
-                    ),
+                    format!("the new moment {moment:.1} kNm/m is over 1.5 times the {table:.1} of {mark}"),
                     "check these panels by analysis",
                 );
             }
         }
     }
-}
-
-/// A support's name, or its panel's edge.
-fn support_words(floor: &Floor, support: &Support) -> String {
-    support.name.as_ref().map_or_else(
-        || {
-            let panel = floor.panel(support.near.panel);
-            format!("{} {} edge", panel.mark, panel.side_word(support.near.side))
-        },
-        |name| format!("support {name}"),
-    )
 }
 
 fn similar_neighbours(supports: &[SupportDesign], queries: &mut Vec<Query>) {

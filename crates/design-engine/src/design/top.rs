@@ -14,6 +14,8 @@ use crate::result::{Action, SupportDesign, SupportSideDesign};
 
 /// A new moment this much above the table's lengthens the top bars (3.5.3.6 e; decision: 10 %).
 const RISE_THAT_LENGTHENS: f64 = 1.10;
+/// Reach of crossing bars past each face as a share of the lesser lx of the two panels (decision).
+const CROSSING_SHARE: f64 = 0.3;
 /// Spans within this of each other allow alternate reversed bars.
 const REVERSED_SPAN_VARIATION: f64 = 0.15;
 
@@ -130,6 +132,11 @@ impl<'a> TopTask<'a> {
 
     /// Reach past the face into each panel, and whether alternate bars are reversed.
     fn reaches(&self, bars: BarChoice) -> (Vec<Reach>, bool) {
+        if self.support.kind == SupportKind::Crossing {
+            let lx_m = self.sides.iter().map(|side| side.fixed.basis.lx_m).fold(f64::INFINITY, f64::min);
+            let long = round_up_50(CROSSING_SHARE * lx_m * 1000.0);
+            return (vec![Reach { long, short: long, from_contraflexure: false }; self.sides.len()], false);
+        }
         let trial = self.trial(Place::Panel, bars);
         let l_mm = self.sides.iter().map(|side| side.l_m).fold(0.0, f64::max) * 1000.0;
         let simplified = top_extents(l_mm, bars.bar_mm);
@@ -172,7 +179,7 @@ impl<'a> TopTask<'a> {
             from_contraflexure: false,
         };
         let run_through = Reach { long: round_up_50(side.clear_span_mm), from_contraflexure: true, ..plain };
-        if self.support.kind == SupportKind::Crossing || fixed.basis.action == Action::OneWay {
+        if fixed.basis.action == Action::OneWay {
             return plain;
         }
         if side.midspan_after_knm_m < 0.0 {
