@@ -7,7 +7,7 @@ use crate::floor::{Axis, Floor, PanelId};
 
 /// The axis of the top outer bars (T1) around each panel: one direction over each region connected by
 /// supports. By `Layering` where it names an axis; else the direction with the greater sum of support moment
-/// x length; on a tie the direction of most short spans, then of the panel's own short span.
+/// x length; on a tie the direction of most short spans, then of the span that carries in the region's first panel.
 pub(crate) fn t1_axes(
     floor: &Floor,
     criteria: &Criteria,
@@ -34,12 +34,16 @@ pub(crate) fn t1_axes(
             if let (Layering::Outer(axis), false) = (criteria.layering, panel.is_loose()) {
                 return axis;
             }
-            let [x, y] = sums[roots.find(index)];
+            let root = roots.find(index);
+            let [x, y] = sums[root];
             if (x - y).abs() > 1e-9 * x.max(y) {
                 return if x > y { Axis::X } else { Axis::Y };
             }
-            let own = || fixed[index].map_or(Axis::X, |f| f.basis.axis_of(f.basis.main_span));
-            if panel.is_loose() { own() } else { most_short_spans.unwrap_or_else(own) }
+            let mut first = || {
+                let designed = (0..fixed.len()).filter(|i| roots.find(*i) == root).find_map(|i| fixed[i]);
+                designed.map_or(Axis::X, |f| f.basis.axis_of(f.basis.main_span))
+            };
+            if panel.is_loose() { first() } else { most_short_spans.unwrap_or_else(first) }
         })
         .collect()
 }

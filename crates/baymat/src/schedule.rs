@@ -1,0 +1,55 @@
+//! `baymat schedule`: design a floor book and write its schedule workbook.
+
+use schedule_io::write::{WriteError, write_results, write_workbook};
+
+use crate::cli::ScheduleArgs;
+use crate::console::Console;
+use crate::exit::{Exit, Stop};
+use crate::message::Message;
+use crate::outputs::{self, Output};
+use crate::pipeline::{Designed, design_book};
+use crate::progress::during;
+use crate::summary;
+
+pub(crate) fn run(args: &ScheduleArgs, console: &mut Console) -> Result<Exit, Stop> {
+    let outputs = outputs_of(args)?;
+    // A book that is not there is told as such, not as outputs without a folder.
+    if args.book.exists() {
+        outputs::refuse_clashes(&args.book, &outputs)?;
+        outputs::test_all(&outputs, args.replace)?;
+    }
+    let show_progress = console.may_show_progress() && !args.quiet;
+    let designed = design_book(&args.book, show_progress, !args.quiet)?;
+    let contents = during(show_progress, "writing", || contents(&designed, outputs.len()))
+        .map_err(|error| Stop::file_trouble(vec![Message::error(format!("the outputs: {error}"))]))?;
+    for (output, bytes) in outputs.iter().zip(&contents) {
+        outputs::write(&output.path, bytes, args.replace)?;
+    }
+    if !args.quiet {
+        console.print(&summary::text(&designed, &outputs, console.paint()));
+    }
+    Ok(if designed.design.ok() { Exit::AllPass } else { Exit::NotAllPass })
+}
+
+/// The outputs in the order of writing: the workbook, then the results file if one is asked for.
+fn outputs_of(args: &ScheduleArgs) -> Result<Vec<Output>, Stop> {
+    let path = args.output.clone().unwrap_or_else(|| outputs::default_schedule(&args.book));
+    outputs::refuse_other_endings(&path)?;
+    let mut outputs = vec![Output { path, what: "schedule" }];
+    if let Some(path) = args.json.clone() {
+        outputs.push(Output { path, what: "results file" });
+    }
+    Ok(outputs)
+}
+
+/// Every output's bytes, made before the first is written.
+fn contents(designed: &Designed, count: usize) -> Result<Vec<Vec<u8>>, WriteError> {
+    let submission = designed.submission();
+    let mut contents = vec![write_workbook(&submission)?];
+    if count > 1 {
+        let mut results = Vec::new();
+        write_results(&submission, &mut results)?;
+        contents.push(results);
+    }
+    Ok(contents)
+}
