@@ -7,7 +7,7 @@ use crate::floor::{Axis, Floor, PanelId};
 
 /// The axis of the top outer bars (T1) around each panel: one direction over each region connected by
 /// supports. By `Layering` where it names an axis; else the direction with the greater sum of support moment
-/// x length; on a tie the direction of most short spans, then of the span that carries in the region's first panel.
+/// x length; on a tie the direction of most short spans, then of most spans that carry in the region.
 pub(crate) fn t1_axes(
     floor: &Floor,
     criteria: &Criteria,
@@ -28,6 +28,13 @@ pub(crate) fn t1_axes(
             sums[region][support.axis as usize] += moment * support.length_m();
         }
     }
+    // Spans that carry, by axis, over each region: what decides where nothing else does.
+    let mut carrying = vec![[0_usize; 2]; floor.panels.len()];
+    for (index, fixed) in fixed.iter().enumerate() {
+        if let Some(fixed) = fixed {
+            carrying[roots.find(index)][fixed.basis.axis_of(fixed.basis.main_span) as usize] += 1;
+        }
+    }
     (0..floor.panels.len())
         .map(|index| {
             let panel = floor.panel(PanelId(index));
@@ -39,11 +46,8 @@ pub(crate) fn t1_axes(
             if (x - y).abs() > 1e-9 * x.max(y) {
                 return if x > y { Axis::X } else { Axis::Y };
             }
-            let mut first = || {
-                let designed = (0..fixed.len()).filter(|i| roots.find(*i) == root).find_map(|i| fixed[i]);
-                designed.map_or(Axis::X, |f| f.basis.axis_of(f.basis.main_span))
-            };
-            if panel.is_loose() { first() } else { most_short_spans.unwrap_or_else(first) }
+            let most_carrying = if carrying[root][1] > carrying[root][0] { Axis::Y } else { Axis::X };
+            if panel.is_loose() { most_carrying } else { most_short_spans.unwrap_or(most_carrying) }
         })
         .collect()
 }
