@@ -75,7 +75,7 @@ fn queries(results: &Value) -> String {
     let mut text = String::new();
     for query in results["queries"].as_array().unwrap() {
         let of = |key: &str| query[key].as_str().unwrap_or("-").to_owned();
-        writeln!(text, "{} | {} | {} | {}", of("severity"), of("panel"), of("place"), of("text")).unwrap();
+        writeln!(text, "{} | {} | {} | {}", of("severity"), of("about"), of("place"), of("text")).unwrap();
     }
     text
 }

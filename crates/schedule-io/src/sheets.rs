@@ -424,3 +424,52 @@ pub fn describe_sheets() -> String {
     }
     out
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    fn plain(text: &str) -> String {
+        text.chars().filter(|c| !c.is_whitespace()).flat_map(char::to_lowercase).collect()
+    }
+
+    #[test]
+    fn csv_files_are_named_after_their_sheets() {
+        for sheet in SHEETS {
+            assert_eq!(sheet.csv, format!("{}.csv", sheet.name.to_lowercase().replace(' ', "_")));
+        }
+    }
+
+    #[test]
+    fn headings_and_items_differ_in_more_than_case_and_spaces() {
+        let distinct = |names: Vec<&str>| {
+            let mut plain: Vec<String> = names.iter().map(|name| plain(name)).collect();
+            plain.sort();
+            plain.dedup();
+            assert_eq!(plain.len(), names.len(), "{names:?}");
+        };
+        for sheet in SHEETS {
+            distinct(sheet.columns.iter().map(|column| column.heading).collect());
+        }
+        distinct(SHEETS.iter().map(|sheet| sheet.name).collect());
+        distinct(SETTINGS.iter().map(|setting| setting.item).collect());
+    }
+
+    #[test]
+    fn the_description_names_every_column_and_item_with_what_is_allowed() {
+        let text = describe_sheets();
+        assert!(text.contains("| Thickness (mm) |  | 75 to 1000 | blank: from Criteria |"), "{text}");
+        assert!(text.contains("| X from | yes | the name of an X gridline | west side |"), "{text}");
+        assert!(text.contains("| Cube strength fcu (N/mm2) | 30 | 20 to 60 |"), "{text}");
+        for sheet in SHEETS {
+            assert!(sheet.columns.iter().all(|column| text.contains(&format!("| {} |", column.title()))));
+        }
+        assert!(
+            SETTINGS
+                .iter()
+                .all(|setting| text.contains(&format!("| {} |", title(setting.item, setting.unit))))
+        );
+        // A bar in a cell would break the table.
+        assert!(text.lines().filter(|line| line.starts_with('|')).all(|line| line.matches('|').count() == 5));
+    }
+}

@@ -147,7 +147,11 @@ fn frame(sheet: &mut Worksheet, spec: &Sheet) -> Result<(), XlsxError> {
     let may = heading.set_background_color(LIGHT);
     for (index, column) in (0..).zip(spec.columns) {
         let format = if column.every_row() { &must } else { &may };
-        let format = if is_number(column) { &format.clone().set_align(FormatAlign::Right) } else { format };
+        let format = if is_number(column) {
+            &format.clone().set_align(FormatAlign::Right).set_indent(1)
+        } else {
+            format
+        };
         sheet.write_string_with_format(HEADINGS, index, column.title(), format)?;
         sheet.set_column_width(index, width(column))?;
         if let Some(format) = column_format(column) {

@@ -179,9 +179,6 @@ impl<'a> TopTask<'a> {
             from_contraflexure: false,
         };
         let run_through = Reach { long: round_up_50(side.clear_span_mm), from_contraflexure: true, ..plain };
-        if fixed.basis.action == Action::OneWay {
-            return plain;
-        }
         if side.midspan_after_knm_m < 0.0 {
             return run_through;
         }
@@ -190,7 +187,13 @@ impl<'a> TopTask<'a> {
             return plain;
         }
         let span = fixed.basis.span_along(side.at.side.span_axis());
-        let free = fixed.midspan(span) + (table + fixed.side(side.at.side.opposite())) / 2.0;
+        let free = if fixed.basis.action == Action::OneWay {
+            // A strip's greatest sagging need not be at midspan.
+            fixed.unit_moment_knm_m[span as usize] / 8.0
+        } else {
+            let ends = [side.at.side, side.at.side.opposite()].map(|end| fixed.side_counted(end));
+            fixed.midspan(span) + (ends[0] + ends[1]) / 2.0
+        };
         let Some(x0) = contraflexure(free, side.near_knm_m, side.far_knm_m, side.l_m * 1000.0) else {
             return run_through;
         };

@@ -84,7 +84,7 @@ fn t1_bars_run_across_the_supports_with_the_greater_sum_of_moment_times_length()
 
 /// Four panels of 6 x 4 m around a void of 2 x 2 m, each against the next over 4 m of its edge: whatever holds along
 /// x holds along y.
-fn pinwheel() -> Floor {
+pub(crate) fn pinwheel() -> Floor {
     let rectangles = [("A", 0, 6, 0, 4), ("B", 6, 10, 0, 6), ("C", 4, 10, 6, 10), ("D", 0, 4, 4, 10)];
     let mut floor = Floor::default();
     let m = |metres: i64| TenthMm(10_000 * metres);

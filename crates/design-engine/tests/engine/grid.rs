@@ -83,6 +83,11 @@ impl Grid {
         })
     }
 
+    /// Marks of the panels that are there, row by row.
+    pub(crate) fn marks(&self) -> Vec<String> {
+        self.cells.iter().flatten().map(|cell| cell.mark.clone()).collect()
+    }
+
     /// Changes one panel.
     pub(crate) fn with(mut self, mark: &str, change: impl FnOnce(&mut Cell)) -> Grid {
         let cell = self.cells.iter_mut().flatten().find(|cell| cell.mark == mark);

@@ -4,10 +4,15 @@
 
 mod bars_and_depths;
 mod checks_of_panels;
+mod choice;
 mod grid;
+mod moved;
 mod numbers;
 mod printed;
+mod properties;
 mod published;
-mod scratch;
+mod random;
 mod second_method;
 mod settings;
+mod spans_and_actions;
+mod supports_and_balancing;

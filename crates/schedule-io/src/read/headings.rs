@@ -264,3 +264,40 @@ fn fits(raw: &RawSheet, headings: &RawRow, row: &RawRow, report: &Report) -> boo
     );
     false
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::sheets::{CHOSEN_BARS, PANELS};
+
+    #[test]
+    fn a_heading_is_taken_apart_from_its_unit() {
+        for (text, expected) in [
+            ("Position (m)", ("Position", Some("m"))),
+            (" Imposed  [ kN/m2 ] ", ("Imposed", Some("kN/m2"))),
+            ("Position", ("Position", None)),
+            ("Item (a) b", ("Item (a) b", None)),
+            ("(m)", ("", Some("m"))),
+            ("", ("", None)),
+        ] {
+            assert_eq!(apart(text), expected, "{text}");
+        }
+    }
+
+    #[test]
+    fn headings_match_without_case_spaces_and_unit() {
+        assert_eq!(known(&PANELS, "xFROM"), Some(1));
+        assert_eq!(known(&PANELS, "  X\u{a0} from "), Some(1));
+        assert_eq!(known(&PANELS, "Thickness(cm)"), Some(5));
+        assert_eq!(known(&PANELS, "Remark"), known(&PANELS, "Remarks"));
+        assert_eq!(known(&CHOSEN_BARS, "Remarks"), Some(4));
+        assert_eq!(known(&PANELS, "(mm)"), None);
+        assert_eq!(known(&PANELS, "Thick"), None);
+    }
+
+    #[test]
+    fn a_heading_named_twice_counts_once() {
+        let cells = ["Panel", "panel", "X to", "other"].map(Cow::Borrowed);
+        assert_eq!(known_in(&PANELS, cells.into_iter()), 2);
+    }
+}
