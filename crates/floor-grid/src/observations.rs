@@ -119,21 +119,39 @@ fn facing_pairs(axis: Axis, edges: &LineEdges, facing: &LineEdges) -> Vec<[Party
     pairs
 }
 
-/// Edges stated continuous over a joint, a step or nothing at all: one warning an edge.
+/// Edges stated continuous over a joint, a step or nothing at all: one warning an edge. Two statements that deny each
+/// other are an error: neither can win.
 fn warn_of_contradictions(plan: &Plan<'_>, queries: &mut Vec<Query>) {
     let mut told = std::collections::BTreeSet::new();
     for meeting in plan.meetings {
         let [near, far] = plan.parties(meeting);
         for (me, other) in [(near, far), (far, near)] {
             let Some(me) = me.filter(|me| plan.stated(*me) == Some(StatedEdge::Continuous)) else { continue };
-            let over = if meeting.joint {
-                format!("a movement joint on gridline {}", plan.line_name(me))
+            let denied = match other.and_then(|other| plan.stated(other).map(|stated| (other, stated))) {
+                Some((other, StatedEdge::Discontinuous)) => Some((other, "discontinuous")),
+                Some((other, StatedEdge::Free)) => Some((other, "free")),
+                _ => None,
+            };
+            if let Some((other, word)) = denied {
+                let mark = plan.mark(other.panel);
+                queries.push(Query::new(
+                    Severity::Error,
+                    Subject::Edge { mark: plan.mark(me.panel).to_owned(), side: me.side },
+                    format!("stated continuous, while {mark} states the same edge {word} from its side"),
+                    "state the edge the same on both sides, or leave both cells blank",
+                ));
+                continue;
+            }
+            let over = if other.is_none() {
+                " with no panel beyond: nothing here balances its moment".to_owned()
+            } else if meeting.joint {
+                format!(" over a movement joint on gridline {}", plan.line_name(me))
             } else if !meeting.held {
-                "a stretch without support (Supports sheet)".to_owned()
+                " over a stretch without support (Supports sheet)".to_owned()
             } else if let Some(step_mm) = other.map(|other| plan.step_mm(me.panel, other.panel))
                 && step_mm > STEP_MM + 1e-9
             {
-                format!("a level difference of {} (over {STEP_MM})", step_words(step_mm))
+                format!(" over a level difference of {} (over {STEP_MM})", step_words(step_mm))
             } else {
                 continue;
             };
@@ -141,7 +159,7 @@ fn warn_of_contradictions(plan: &Plan<'_>, queries: &mut Vec<Query>) {
                 queries.push(Query::new(
                     Severity::Warning,
                     Subject::Edge { mark: plan.mark(me.panel).to_owned(), side: me.side },
-                    format!("the edge is stated continuous over {over}"),
+                    format!("the edge is stated continuous{over}"),
                     "leave the cell blank unless the detail there carries the moment",
                 ));
             }

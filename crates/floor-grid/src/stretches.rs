@@ -230,7 +230,7 @@ fn contradiction(layout: &Layout, line: Line, one: &Row, other: &Row) -> Query {
         Severity::Error,
         Subject::Row { sheet: "Supports", index: later.index },
         format!(
-            "{} gridline {name} has both a support and none over one stretch (data rows {} and {})",
+            "{} gridline {name} has both a support and none over one stretch (rows {} and {} below the headings)",
             axis.word().to_uppercase(),
             earlier.index + 1,
             later.index + 1

@@ -9,6 +9,9 @@ use crate::result::{Action, Basis};
 /// ly/lx above which a panel spans one way (common practice; the two-way tables end at 2).
 pub const GREATEST_TWO_WAY_RATIO: f64 = 2.0;
 
+/// An opening over this share of a span leaves no panel to design by coefficients (decision).
+const GREATEST_OPENING_SHARE: f64 = 0.5;
+
 /// What is settled for a panel, or why it is not designed.
 pub(crate) type Settled = Result<Basis, String>;
 
@@ -203,6 +206,13 @@ fn settle_panel(
     let states = own_states(floor, panel);
     let (short_along, by_x) = short_axis(floor, panel, &states, spans, most, tolerance_m);
     let (lx_m, ly_m) = (spans[0].min(spans[1]), spans[0].max(spans[1]));
+    let share = |axis: Axis, widths: [f64; 2]| widths[axis as usize] / panel.span_m(axis);
+    let greatest = panel.openings.iter().flat_map(|o| [Axis::X, Axis::Y].map(|axis| share(axis, o.widths_m)));
+    if greatest.fold(0.0, f64::max) > GREATEST_OPENING_SHARE {
+        return Err(
+            "an opening takes more than half of a span: what is left is not a slab on four sides".to_owned()
+        );
+    }
     if panel.spanning == Spanning::Cantilever {
         let Some(root) = Side::ALL.into_iter().find(|side| states[side.index()] == EdgeState::Continuous)
         else {

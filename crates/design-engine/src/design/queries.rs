@@ -1,13 +1,26 @@
 //! What a finished design has to say: queries and printed assumptions.
 
-use crate::check::Place;
-use crate::criteria::{Coefficients, Criteria, EdgeStrips};
+use crate::check::{CheckKind, Place};
+use crate::criteria::{Coefficients, Criteria, EdgeStrips, SETTINGS, Value};
 use crate::floor::{Corners, EdgeState, Floor, PanelId, Side, Span, SupportKind};
 use crate::query::{Query, Severity, Subject};
 use crate::result::{Action, PanelDesign, SupportDesign};
 
 /// Ratios of neighbours' loads or spans outside this and its inverse are a warning (decision).
 const LEAST_NEIGHBOUR_RATIO: f64 = 0.5;
+/// Settings that this version reads and does not use.
+const NOT_YET_USED: [&str; 9] = [
+    "thickness_options_mm",
+    "concrete_rate_per_m3",
+    "steel_rate_per_t",
+    "formwork_rate_per_m2",
+    "currency",
+    "rate_source",
+    "concrete_carbon_kgco2e_m3",
+    "steel_carbon_kgco2e_kg",
+    "carbon_source",
+];
+
 /// "Approximately the same" (3.5.3.5) for the summary note (decision).
 const SIMILAR_NEIGHBOUR_RATIO: f64 = 0.8;
 /// A new support moment above this multiple of a panel's table value is a warning (decision).
@@ -45,11 +58,7 @@ fn of_panel(floor: &Floor, design: &PanelDesign, queries: &mut Vec<Query>) {
         let least = design
             .least_thickness_mm
             .map_or(String::new(), |h| format!("; the least thickness at which deflection passes is {h} mm"));
-        say(
-            Severity::Warning,
-            format!("fails {}{least}", failed.join(", ")),
-            "see its rows on the Checks sheet; change the thickness, the bars allowed or the loads",
-        );
+        say(Severity::Warning, format!("fails {}{least}", failed.join(", ")), remedy_of(design));
     }
     let Some(basis) = design.basis else { return };
     for (span, length) in [(Span::Short, basis.lx_m), (Span::Long, basis.ly_m)] {
@@ -89,6 +98,31 @@ fn of_panel(floor: &Floor, design: &PanelDesign, queries: &mut Vec<Query>) {
     }
 }
 
+/// What to change where a panel fails: by the checks that fail.
+fn remedy_of(design: &PanelDesign) -> &'static str {
+    let failed = |test: fn(CheckKind) -> bool| design.checks.iter().filter(|c| !c.ok).all(|c| test(c.kind));
+    let durability =
+        |kind| matches!(kind, CheckKind::CoverForDurability | CheckKind::CoverForBarAndAggregate);
+    let fire = |kind| matches!(kind, CheckKind::CoverForFire | CheckKind::ThicknessForFire);
+    let bars = |kind| {
+        matches!(
+            kind,
+            CheckKind::BarSpacing | CheckKind::BarGap | CheckKind::MinimumSteel | CheckKind::MaximumSteel
+        )
+    };
+    if failed(durability) {
+        "raise Bottom cover and Top cover or the cube strength, or correct Exposure"
+    } else if failed(fire) {
+        "raise Bottom cover or Thickness, or correct Fire resistance"
+    } else if failed(bars) {
+        "change the chosen bars, or the sizes and spacings allowed"
+    } else if failed(|kind| kind == CheckKind::Uplift) {
+        "hold the far support down, or shorten the cantilever"
+    } else {
+        "see its rows on the Checks sheet; change the thickness, the bars allowed or the loads"
+    }
+}
+
 fn of_openings(design: &PanelDesign, say: &mut dyn FnMut(Severity, String, &str)) {
     for (number, opening) in (1..).zip(&design.openings) {
         let [x, y] = opening.opening.widths_m;
@@ -104,6 +138,9 @@ fn of_openings(design: &PanelDesign, say: &mut dyn FnMut(Severity, String, &str)
                 format!("{name}: {why}: the coefficient method does not cover it"),
                 "analyse the panel with its opening, or frame the opening with beams",
             );
+        }
+        if opening.over_quarter_of_span || opening.within_d_of_support {
+            continue;
         }
         let text = if opening.displaced {
             format!("{name}: bars are moved aside, none cut")
@@ -200,6 +237,23 @@ fn settings_not_applied(criteria: &Criteria, queries: &mut Vec<Query>) {
             "more steel than asked; nothing to do",
         );
     }
+    let read_only: Vec<&str> = SETTINGS
+        .iter()
+        .filter(|setting| NOT_YET_USED.contains(&setting.key) && criteria.value(setting) != Value::Blank)
+        .map(|setting| setting.item)
+        .collect();
+    if !read_only.is_empty() {
+        let text = format!("read but not used by this version: {}", read_only.join(", "));
+        queries.push(Query::new(
+            Severity::Note,
+            Subject::Floor,
+            text,
+            "no comparison of thicknesses, cost or carbon is made",
+        ));
+    }
+    let mut say = |item, text: &str, remedy: &str| {
+        queries.push(Query::new(Severity::Warning, Subject::Setting(item), text, remedy));
+    };
     if criteria.bar_kinds_limit.is_some() {
         say(
             "Bar kinds limit",
@@ -218,46 +272,63 @@ pub(crate) fn assumptions(floor: &Floor, criteria: &Criteria, panels: &[PanelDes
         Coefficients::Equations => "Two-way moments from equations 12 to 18; shears from Table 3.15.".to_owned(),
     });
     list.push("The midspan moment for bottom steel and deflection is never below the table's: a neighbour may be unloaded.".to_owned());
+    list.push("Top bars at discontinuous edges (3.12.10.3.2), distribution bars over supports and trimming bars at openings are not among the bars listed; the first are counted as present at corners and for the depth of T2 bars.".to_owned());
     list.push("Bottom bars of a panel's middle strip are given over its full width.".to_owned());
     let restrained = |d: &PanelDesign| d.basis.is_some_and(|b| b.action == Action::TwoWayRestrained);
     if any(&restrained) {
-        list.push("Corners of restrained two-way panels are held down; torsion steel at corners (3.5.3.5) is to be added to the bars listed here.".to_owned());
+        list.push("Corners of restrained two-way panels are held down; the torsion steel to be added there (3.5.3.5) is on the Corners sheet and not in the bars listed.".to_owned());
     }
     if criteria.corners == Corners::FreeToLift && any(&restrained) {
         list.push("Corners free to lift applies only to panels discontinuous on all four edges; the others are designed with corners held down.".to_owned());
     }
     if any(&|d| d.basis.is_some_and(|b| b.action == Action::OneWay)) {
-        list.push("One-way panels: simply supported, or Table 3.12 where its conditions hold (spans and loads within 15 %, one thickness, the panel's own area taken as the bay).".to_owned());
+        list.push("One-way strips: Table 3.12 where its conditions hold (spans and loads within 15 %, one thickness, the panel's own area taken as the bay), else elastic analysis with support moments reduced by 20 %.".to_owned());
     }
-    let stated: Vec<String> = floor
-        .panels
-        .iter()
-        .enumerate()
-        .filter(|(index, panel)| panels[*index].not_designed.is_none() && !panel.is_loose())
-        .flat_map(|(index, panel)| {
-            let own = |side: &Side| {
-                let edge = panel.edge(*side);
-                edge.stated
-                    && edge.state == EdgeState::Continuous
-                    && shared_with_none(floor, PanelId(index), *side)
-            };
-            Side::ALL
-                .into_iter()
-                .filter(own)
-                .map(|side| format!("{} {}", panel.mark, side.word()))
-                .collect::<Vec<_>>()
-        })
-        .collect();
+    let stated = edges_in_words(floor, panels, &|design, side| {
+        let panel = floor.panel(design.panel);
+        let edge = panel.edge(side);
+        let alone = edge.stated && edge.state == EdgeState::Continuous && !panel.is_loose();
+        alone && shared_with_none(floor, design.panel, side)
+    });
     if !stated.is_empty() {
         list.push(format!(
             "Edges stated continuous with nothing to balance against keep their coefficient moment: {}.",
-            stated.join(", ")
+            stated
+        ));
+    }
+    let partly = edges_in_words(floor, panels, &|design, side| {
+        design.edge_states[side.index()] == EdgeState::PartlyContinuous
+    });
+    if !partly.is_empty() {
+        list.push(format!("Partly continuous edges: the panel is designed with them discontinuous; each shared stretch has the moment and shear of the case with that edge continuous: {partly}."));
+    }
+    let back_spans = edges_in_words(floor, panels, &|design, side| {
+        let own = design.basis.map(|basis| basis.state(side));
+        own.is_some_and(|own| own != design.edge_states[side.index()])
+    });
+    if !back_spans.is_empty() {
+        list.push(format!(
+            "Edges against cantilevers count as discontinuous in the back-span's own case: {back_spans}."
         ));
     }
     if panels.iter().any(|d| d.basis.is_some() && floor.panel(d.panel).is_loose()) {
         list.push("Loose panels are designed alone: no balancing at their continuous edges.".to_owned());
     }
     list
+}
+
+/// `F11 south, F12 south`: the edges of designed panels that a test picks.
+fn edges_in_words(
+    floor: &Floor,
+    panels: &[PanelDesign],
+    picks: &dyn Fn(&PanelDesign, Side) -> bool,
+) -> String {
+    let edges = panels.iter().filter(|design| design.not_designed.is_none()).flat_map(|design| {
+        let panel = floor.panel(design.panel);
+        let picked = Side::ALL.into_iter().filter(move |side| picks(design, *side));
+        picked.map(move |side| format!("{} {}", panel.mark, panel.side_word(side)))
+    });
+    edges.collect::<Vec<_>>().join(", ")
 }
 
 fn shared_with_none(floor: &Floor, id: PanelId, side: Side) -> bool {
