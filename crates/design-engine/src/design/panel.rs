@@ -167,7 +167,7 @@ pub(crate) fn distribution(
     let root_bar = supports.iter().map(|support| support.bars.bar_mm).fold(0.0, f64::max);
     let cover = criteria.top_cover_mm + if outermost { 0.0 } else { root_bar };
     let trial = |bars: BarChoice| Trial {
-        at: if span == Span::Short { Place::ShortMidspan } else { Place::LongMidspan },
+        at: Place::TopFace,
         bars,
         stated: false,
         moment_knm_m: None,

@@ -8,12 +8,15 @@
 //! Each sheet is one table of columns (heading, unit, width, number format, meaning, value); all rows go
 //! through one sink, strictly in order. Both outputs take the same `f64`.
 
+mod beam_loads;
 mod checks;
 mod column;
+mod corners;
 mod cover;
 mod edges;
 mod look;
 mod numbers;
+mod openings;
 mod panels;
 mod queries;
 mod results;

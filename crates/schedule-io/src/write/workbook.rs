@@ -3,7 +3,10 @@
 use rust_xlsxwriter::{Workbook, Worksheet, XlsxError};
 
 use super::column::{Column, ColumnDescription};
-use super::{Submission, WriteError, checks, cover, edges, look, panels, queries, supports, title_block};
+use super::{
+    Submission, WriteError, beam_loads, checks, corners, cover, edges, look, openings, panels, queries,
+    supports, title_block,
+};
 
 /// How a sheet is kept until the file is saved.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -18,8 +21,17 @@ pub(super) enum Keeping {
 type WriteSheet = fn(&Submission<'_>, &mut Worksheet) -> Result<(), WriteError>;
 
 /// The sheets in order.
-const SHEETS: [WriteSheet; 6] =
-    [cover::write, panels::write, supports::write, edges::write, checks::write, queries::write];
+const SHEETS: [WriteSheet; 9] = [
+    cover::write,
+    panels::write,
+    supports::write,
+    edges::write,
+    checks::write,
+    corners::write,
+    openings::write,
+    beam_loads::write,
+    queries::write,
+];
 
 /// Writes the schedule workbook.
 pub(super) fn write(submission: &Submission<'_>) -> Result<Vec<u8>, WriteError> {
@@ -69,6 +81,9 @@ pub fn describe_sheets() -> Vec<SheetDescription> {
         described(supports::NAME, "a support with top bars", &supports::columns()),
         described(edges::NAME, "a stretch of a panel's edge", &edges::columns()),
         described(checks::NAME, "a check of a panel", &checks::columns()),
+        described(corners::NAME, "a corner of a restrained two-way panel", &corners::columns()),
+        described(openings::NAME, "an opening and a layer of bars it cuts", &openings::columns()),
+        described(beam_loads::NAME, "a panel's edge on its support", &beam_loads::columns()),
         described(queries::NAME, "a query", &queries::columns()),
     ]
 }

@@ -3,6 +3,7 @@
 //! Keys stand in the order of that page and end in their unit; what does not apply is `null`. Parts that no
 //! design makes yet are left out.
 
+mod loads;
 mod panels;
 mod supports;
 
@@ -35,6 +36,10 @@ fn document<'a>(submission: &'a Submission<'a>) -> Document<'a> {
         panels: Each(submission, panels::each),
         supports: Each(submission, supports::each),
         edge_segments: Each(submission, panels::each_segment),
+        corners: Each(submission, loads::each_corner),
+        beam_loads: Each(submission, loads::each_beam_load),
+        beam_loads_total: loads::beam_loads_total(submission),
+        openings: Each(submission, loads::each_opening),
         queries: Each(submission, each_query),
     }
 }
@@ -51,6 +56,10 @@ struct Document<'a> {
     panels: Each<'a, panels::PanelResult<'a>>,
     supports: Each<'a, supports::SupportResult<'a>>,
     edge_segments: Each<'a, panels::SegmentResult<'a>>,
+    corners: Each<'a, loads::CornerResult<'a>>,
+    beam_loads: Each<'a, loads::BeamLoadResult<'a>>,
+    beam_loads_total: loads::BeamLoadsTotal,
+    openings: Each<'a, loads::OpeningResult<'a>>,
     queries: Each<'a, QueryResult<'a>>,
 }
 

@@ -4,6 +4,7 @@
 use std::cell::Cell;
 
 use design_engine::bs8110::coefficients::PanelCase;
+use design_engine::bs8110::corners::CornerState;
 use design_engine::check::{Check, CheckKind, Place};
 use design_engine::criteria::{Criteria, Value};
 use design_engine::floor::*;
@@ -132,6 +133,8 @@ fn panel(mark: &str, x: [f64; 2], y: [f64; 2], thickness_mm: f64, edges: [Edge; 
         top_level_mm: 0.0,
         edges,
         chosen_bottom: [None, None],
+        openings: Vec::new(),
+        line_loads: Vec::new(),
         not_designed: None,
     }
 }
@@ -259,6 +262,7 @@ impl Numbers {
                 action: Action::TwoWayRestrained,
                 main_span: Span::Short,
                 case: Some(PanelCase { long_discontinuous: 1, short_discontinuous: 1 }),
+                states: [0, 1, 2, 3].map(|index| panel.edges[index].state),
             }),
             edge_states: [0, 1, 2, 3].map(|index| panel.edges[index].state),
             loads: LoadBuildUp {
@@ -271,6 +275,10 @@ impl Numbers {
             },
             sections: self.sections(panel),
             checks: self.checks(panel),
+            corners: self.corners(panel),
+            openings: self.openings(panel),
+            side_loads: [0, 1, 2, 3].map(|_| Some(self.side_load())),
+            total_ultimate_kn: self.about(400.0),
             deflection: Some(DeflectionWorking {
                 basic: self.about(26.0),
                 fs_n_mm2: self.about(280.0),
@@ -288,10 +296,66 @@ impl Numbers {
             basis: None,
             sections: Vec::new(),
             checks: Vec::new(),
+            corners: Vec::new(),
+            openings: Vec::new(),
+            side_loads: [None; 4],
+            total_ultimate_kn: 0.0,
             deflection: None,
             governing: None,
             thickness_governed_by: None,
             ..design
+        }
+    }
+
+    fn corners(&self, panel: &Panel) -> Vec<CornerDesign> {
+        if panel.is_loose() {
+            return Vec::new();
+        }
+        let four = || [0, 1, 2, 3].map(|_| self.about(180.0));
+        vec![CornerDesign {
+            sides: [Side::North, Side::East],
+            state: CornerState::OneContinuous,
+            extent_m: self.about(1.1),
+            as_required_mm2_m: self.about(110.0),
+            as_present_mm2_m: four(),
+            as_to_add_mm2_m: four(),
+        }]
+    }
+
+    /// One that cuts two layers in S1, one that moves bars in S2.
+    fn openings(&self, panel: &Panel) -> Vec<OpeningDesign> {
+        let cut = |layer| CutLayer {
+            layer,
+            bars_along: Axis::Y,
+            at: Place::LongMidspan,
+            bars: BarChoice { bar_mm: self.about(10.0), spacing_mm: self.about(200.0) },
+            cut: self.about(4.0),
+            each_side_mm2: self.about(157.0),
+        };
+        let layers = match panel.mark.as_str() {
+            "S1" => vec![cut(Layer::B1), cut(Layer::B2)],
+            "S2" => Vec::new(),
+            _ => return Vec::new(),
+        };
+        vec![OpeningDesign {
+            opening: PanelOpening {
+                from_west_m: self.about(1.0),
+                from_south_m: self.about(1.2),
+                widths_m: [self.about(0.7), self.about(0.8)],
+            },
+            displaced: layers.is_empty(),
+            layers,
+            over_quarter_of_span: false,
+            within_d_of_support: false,
+        }]
+    }
+
+    fn side_load(&self) -> SideLoad {
+        SideLoad {
+            dead_kn_m: self.about(11.0),
+            imposed_kn_m: self.about(5.0),
+            ultimate_kn_m: self.about(24.0),
+            loaded_share: 0.75,
         }
     }
 
