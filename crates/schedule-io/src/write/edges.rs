@@ -1,6 +1,6 @@
 //! Sheet `Edges`: one row per stretch of a panel's edge, with the reason for its state.
 
-use design_engine::floor::{Edge, Floor, Panel, Segment, Side};
+use design_engine::floor::{Edge, EdgeState, Floor, Panel, Segment, Side};
 use rust_xlsxwriter::Worksheet;
 
 use super::column::Column;
@@ -17,19 +17,39 @@ pub(super) struct EdgeRow<'a> {
     side: Side,
     edge: &'a Edge,
     segment: &'a Segment,
+    /// State of the edge as it counts in the panel's own case; none where the panel is not designed.
+    own: Option<EdgeState>,
 }
 
 pub(super) fn write(submission: &Submission<'_>, worksheet: &mut Worksheet) -> Result<(), WriteError> {
     let floor = submission.floor;
-    let rows = floor.panels.iter().flat_map(|panel| {
+    let rows = submission.design.panels.iter().flat_map(|design| {
+        let panel = floor.panel(design.panel);
+        let basis = design.basis.filter(|_| design.not_designed.is_none());
         Side::ALL.into_iter().flat_map(move |side| {
             let edge = panel.edge(side);
+            let own = basis.map(|basis| basis.state(side));
             edge.segments
                 .iter()
-                .map(move |segment| (Tone::Plain, EdgeRow { floor, panel, side, edge, segment }))
+                .map(move |segment| (Tone::Plain, EdgeRow { floor, panel, side, edge, segment, own }))
         })
     });
     lay_down(worksheet, NAME, &columns(), FROZEN_COLUMNS, rows)
+}
+
+/// What the design assumes of an edge beyond its state.
+fn assumption(row: &EdgeRow<'_>) -> Option<&'static str> {
+    match (row.own?, row.edge.state) {
+        (_, EdgeState::PartlyContinuous) => Some(
+            "panel designed with this edge discontinuous; each shared stretch has the moment and shear of the case \
+             with it continuous",
+        ),
+        (EdgeState::Discontinuous | EdgeState::PartlyContinuous, EdgeState::Continuous) => {
+            Some("against a cantilever: counts as discontinuous in the panel's own case")
+        }
+        _ if row.edge.stated => Some("as stated in the book, whatever the layout shows"),
+        _ => None,
+    }
 }
 
 pub(super) fn columns<'a>() -> Vec<Column<'a, EdgeRow<'a>>> {
@@ -82,6 +102,8 @@ pub(super) fn columns<'a>() -> Vec<Column<'a, EdgeRow<'a>>> {
                 Some(r.edge.why.as_str()).filter(|why| *why != r.segment.why)
             })
             .means("why, in words, where it is not that of the stretch; of a stated edge the book's remark"),
+            Column::words("Assumption", 44.0, |r: &EdgeRow<'_>| assumption(r).map(str::to_owned))
+                .means("what the design assumes of the edge where it is not simply what the layout found"),
             Column::number("Support width", "mm", 0, |r: &EdgeRow<'_>| r.edge.support_width_mm)
                 .means("width of the beam or wall under it"),
         ],

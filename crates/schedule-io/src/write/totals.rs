@@ -16,6 +16,7 @@ pub(super) struct Totals<'a> {
     pub(super) area_m2: f64,
     /// That area times each panel's thickness.
     pub(super) concrete_m3: f64,
+    pub(super) warnings: usize,
 }
 
 impl<'a> Totals<'a> {
@@ -27,6 +28,7 @@ impl<'a> Totals<'a> {
             not_designed: Vec::new(),
             area_m2: floor.panels.iter().map(|panel| panel.area_m2()).sum(),
             concrete_m3: floor.panels.iter().map(|panel| panel.area_m2() * panel.thickness_mm / 1000.0).sum(),
+            warnings: submission.queries.iter().filter(|q| q.query.severity == Severity::Warning).count(),
         };
         for panel in &design.panels {
             let mark = words::mark(floor, panel.panel);
@@ -48,7 +50,15 @@ impl<'a> Totals<'a> {
         if !self.not_designed.is_empty() {
             parts.push(format!("NOT DESIGNED: {}", words::listed(&self.not_designed, MOST_NAMES)));
         }
-        if parts.is_empty() { "PASS: every panel passes every check".to_owned() } else { parts.join("; ") }
+        if parts.is_empty() {
+            parts.push("PASS: every panel passes every check".to_owned());
+        }
+        match self.warnings {
+            0 => {}
+            1 => parts.push("1 warning to be read on the Queries sheet".to_owned()),
+            count => parts.push(format!("{count} warnings to be read on the Queries sheet")),
+        }
+        parts.join("; ")
     }
 }
 
