@@ -164,3 +164,23 @@ mod links {
             .says(&["would be the same file"]);
     }
 }
+
+#[test]
+fn no_floor_book_is_written_over_by_another_books_schedule_or_a_starter() {
+    let dir = tempfile::tempdir().unwrap();
+    small_book(dir.path());
+    run_in(dir.path(), &["starter", "other.xlsx"]).ends_with(0);
+    run_in(dir.path(), &["starter", "other.xlsx", REPLACE]).ends_with(0);
+    let filled_in = dir.path().join("filled.xlsx");
+    let book = Path::new(env!("CARGO_MANIFEST_DIR")).join("../fixtures/floors/workshop/book.xlsx");
+    std::fs::copy(&book, &filled_in).unwrap();
+    for arguments in
+        [&["schedule", "small", "-o", "filled.xlsx", REPLACE][..], &["starter", "filled.xlsx", REPLACE][..]]
+    {
+        run_in(dir.path(), arguments)
+            .ends_with(2)
+            .prints_nothing()
+            .says(&["filled.xlsx: this is a floor book"]);
+    }
+    assert_eq!(std::fs::read(&filled_in).unwrap(), std::fs::read(&book).unwrap());
+}

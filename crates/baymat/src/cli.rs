@@ -27,11 +27,11 @@ const SCHEDULE_EXAMPLES: &str = "Examples:
 
 const CHECK_EXAMPLES: &str = "Examples:
   baymat check floor.xlsx
-  baymat check floor-csv --quiet && echo \"every panel can be designed\"";
+  baymat check floor-csv --quiet && echo \"every panel passes\"";
 
 const STARTER_EXAMPLES: &str = "Examples:
   baymat starter floor.xlsx
-  baymat starter floor.xlsx --replace";
+  baymat starter level-2/floor.xlsx";
 
 const COMPLETIONS_EXAMPLES: &str = "Examples:
   baymat completions bash > ~/.local/share/bash-completion/completions/baymat

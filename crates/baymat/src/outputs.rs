@@ -4,9 +4,10 @@ use std::ffi::OsString;
 use std::path::{Path, PathBuf};
 
 use schedule_io::atomic::{can_write, write_whole};
+use schedule_io::read::is_floor_book;
 
 use crate::exit::Stop;
-use crate::message::Message;
+use crate::message::{Message, one_line};
 
 /// More links than this in a row are taken for a ring.
 const MOST_LINKS: usize = 40;
@@ -80,6 +81,21 @@ pub(crate) fn refuse_clashes(book: &Path, outputs: &[Output]) -> Result<(), Stop
     } else {
         Err(Stop::refused(messages.iter().map(Message::error).collect()))
     }
+}
+
+/// Refuses to write over any floor book, whatever `--replace` says: a book cannot be made again from its outputs.
+pub(crate) fn refuse_floor_books(outputs: &[Output]) -> Result<(), Stop> {
+    let over_a_book = outputs.iter().filter(|output| is_floor_book(&output.path));
+    let refusals: Vec<Message> = over_a_book
+        .map(|output| {
+            let shown = one_line(&output.path.display().to_string());
+            Message::error(format!(
+                "{shown}: this is a floor book, and the {} would be written over it; give another name",
+                output.what
+            ))
+        })
+        .collect();
+    if refusals.is_empty() { Ok(()) } else { Err(Stop::refused(refusals)) }
 }
 
 /// Tests every output's place before any work.

@@ -16,6 +16,7 @@ pub(crate) fn run(args: &ScheduleArgs, console: &mut Console) -> Result<Exit, St
     // A book that is not there is told as such, not as outputs without a folder.
     if args.book.exists() {
         outputs::refuse_clashes(&args.book, &outputs)?;
+        outputs::refuse_floor_books(&outputs)?;
         outputs::test_all(&outputs, args.replace)?;
     }
     let show_progress = console.may_show_progress() && !args.quiet;

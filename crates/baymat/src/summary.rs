@@ -54,6 +54,11 @@ fn totals(designed: &Designed) -> Vec<String> {
         let actions: Vec<String> = actions.iter().map(|(word, count)| format!("{count} {word}")).collect();
         lines.push(actions.join(", "));
     }
+    match designed.book.defaults_used.len() {
+        0 => {}
+        1 => lines.push("1 criterion at its default: see the cover".to_owned()),
+        count => lines.push(format!("{count} criteria at their default: see the cover")),
+    }
     lines
 }
 

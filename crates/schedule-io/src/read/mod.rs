@@ -10,12 +10,15 @@ mod numbers;
 mod on_panels;
 mod open;
 mod panels;
+mod recognise;
 mod report;
 mod rows;
 mod stretches;
 mod units;
 mod unpacked;
 mod workbook;
+
+pub use recognise::is_floor_book;
 
 use std::path::{Path, PathBuf};
 
