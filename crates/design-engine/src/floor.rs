@@ -315,7 +315,7 @@ pub struct Edge {
     pub why: String,
     /// Its segments in order of their start; together they cover the edge.
     pub segments: Vec<Segment>,
-    /// Width of the beam or wall under it, mm.
+    /// Width of the beam or wall that it bears on, mm: at a movement joint, its half of it.
     pub support_width_mm: f64,
 }
 

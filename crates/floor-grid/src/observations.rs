@@ -24,6 +24,7 @@ pub(crate) fn observe(plan: &Plan<'_>, queries: &mut Vec<Query>) {
     note_gaps_within_tolerance(plan, queries);
     warn_of_gaps(plan, queries);
     warn_of_contradictions(plan, queries);
+    note_joints(plan, queries);
     if plan.placed.iter().all(Option::is_some) {
         note_lone_panels(plan, queries);
         note_voids(plan, queries);
@@ -163,6 +164,23 @@ fn warn_of_contradictions(plan: &Plan<'_>, queries: &mut Vec<Query>) {
                     "leave the cell blank unless the detail there carries the moment",
                 ));
             }
+        }
+    }
+}
+
+/// One note for each gridline with a joint between panels: what its detail must give.
+fn note_joints(plan: &Plan<'_>, queries: &mut Vec<Query>) {
+    let mut told = std::collections::BTreeSet::new();
+    for meeting in plan.meetings.iter().filter(|meeting| meeting.joint) {
+        if let [Some(near), Some(_)] = plan.parties(meeting)
+            && told.insert(meeting.line)
+        {
+            queries.push(Query::new(
+                Severity::Note,
+                gridline_subject(plan, near),
+                "movement joint: no bar crosses, each panel bears on half of the support",
+                "detail the bearing",
+            ));
         }
     }
 }

@@ -24,6 +24,7 @@ pub(crate) fn edges_and_supports(plan: &Plan<'_>) -> Edges {
     let count = plan.placed.len();
     let mut segments: Vec<[Vec<Segment>; 4]> = vec![Default::default(); count];
     let mut verdicts: Vec<[Vec<Verdict>; 4]> = vec![Default::default(); count];
+    let mut jointed = vec![[false; 4]; count];
     let mut supports = Vec::new();
     for meeting in plan.meetings {
         let parties @ [near, far] = plan.parties(meeting);
@@ -57,6 +58,7 @@ pub(crate) fn edges_and_supports(plan: &Plan<'_>) -> Edges {
             let (Some(me), Some(judged)) = (me, judged) else { continue };
             let own = support
                 .filter(|(_, owners)| *owners == Owners::Both || (*owners == Owners::Near) == (index == 0));
+            jointed[me.panel.0][me.side.index()] |= meeting.joint;
             verdicts[me.panel.0][me.side.index()].push(judged.0);
             segments[me.panel.0][me.side.index()].push(segment(
                 plan.extent(meeting, me),
@@ -78,7 +80,12 @@ pub(crate) fn edges_and_supports(plan: &Plan<'_>) -> Edges {
                 if segments.is_empty() {
                     return off_plan(plan);
                 }
-                plan.edge(me, segments, &verdicts[side.index()])
+                let mut edge = plan.edge(me, segments, &verdicts[side.index()]);
+                if jointed[index][side.index()] {
+                    // Beside a joint each panel bears on its own half of the support.
+                    edge.support_width_mm /= 2.0;
+                }
+                edge
             })
         })
         .collect();
