@@ -136,7 +136,7 @@ fn a_single_span_built_in_carries_a_fifteenth_or_a_tenth() {
 #[test]
 fn a_one_way_panel_meets_the_two_way_tables_at_ratio_2_without_a_jump() {
     // Long edges of a panel of ratio 2 against a metre strip with as many ends built in: support moments within 15 %,
-    // midspan moments within 25 %, and the strip never the lesser by more than 5 %.
+    // midspan moments within 25 %, and the strip never the lesser by more than 6 %.
     let one = [span(1.0, 150.0, 1.0, 1.0)];
     let [none, one_end, both] = [[false, false], [false, true], [true, true]].map(|built_in| {
         if built_in == [false; 2] {
@@ -150,11 +150,11 @@ fn a_one_way_panel_meets_the_two_way_tables_at_ratio_2_without_a_jump() {
         for how in [Coefficients::Tabulated, Coefficients::Equations] {
             let MomentCoefficients { short_midspan, long_edge, .. } = restrained(case, 2.0, how);
             let step = sagging / short_midspan;
-            assert!((0.95..1.25).contains(&step), "case {}: midspan {step}", case.number());
+            assert!((1.0..1.25).contains(&step), "case {}: midspan {step}", case.number());
             assert_eq!(hogging.is_some(), long_edge.is_some());
             if let (Some(hogging), Some(table)) = (hogging, long_edge) {
                 let step = hogging / table;
-                assert!((0.95..1.15).contains(&step), "case {}: support {step}", case.number());
+                assert!((0.94..1.15).contains(&step), "case {}: support {step}", case.number());
             }
         }
     }
@@ -252,7 +252,7 @@ fn stepped(spans: &[StripSpan], built_in: [bool; 2], single_case: bool, i: usize
         sagging_knm_m: f64::NEG_INFINITY,
         midspan_hogging_knm_m: 0.0,
         ends_knm_m: [reduced(i), reduced(i + 1)],
-        shears_kn_m: [f64::NEG_INFINITY; 2],
+        shears_kn_m: [0.0; 2],
     };
     let mut least_sagging = f64::NEG_INFINITY;
     for (loads, moments) in cases.iter().zip(&elastic) {
@@ -268,7 +268,7 @@ fn stepped(spans: &[StripSpan], built_in: [bool; 2], single_case: bool, i: usize
         let shears = end_shears(loads[i], l, after[0], after[1]);
         assert!((shears[0] + shears[1] - loads[i] * l).abs() < 1e-9 * loads[i] * l);
         for end in [0, 1] {
-            forces.shears_kn_m[end] = forces.shears_kn_m[end].max(shears[end]);
+            forces.shears_kn_m[end] = forces.shears_kn_m[end].max(shears[end].abs());
         }
     }
     (forces, least_sagging)

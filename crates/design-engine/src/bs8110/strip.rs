@@ -27,7 +27,7 @@ pub struct SpanForces {
     pub midspan_hogging_knm_m: f64,
     /// Hogging moments at the two ends, kNm/m.
     pub ends_knm_m: [f64; 2],
-    /// Greatest shears at the two ends, kN/m.
+    /// Greatest shears at the two ends, kN/m, whichever their direction: an end may be held down in some case.
     pub shears_kn_m: [f64; 2],
 }
 
@@ -124,8 +124,8 @@ fn span_forces(
         forces.sagging_knm_m = forces.sagging_knm_m.max(sagging);
         forces.midspan_hogging_knm_m = forces.midspan_hogging_knm_m.max(hogging);
         let tilt = (near - far) / l;
-        forces.shears_kn_m[0] = forces.shears_kn_m[0].max(w * l / 2.0 + tilt);
-        forces.shears_kn_m[1] = forces.shears_kn_m[1].max(w * l / 2.0 - tilt);
+        forces.shears_kn_m[0] = forces.shears_kn_m[0].max((w * l / 2.0 + tilt).abs());
+        forces.shears_kn_m[1] = forces.shears_kn_m[1].max((w * l / 2.0 - tilt).abs());
     }
     forces
 }

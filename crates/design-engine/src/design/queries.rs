@@ -61,6 +61,14 @@ fn of_panel(floor: &Floor, design: &PanelDesign, queries: &mut Vec<Query>) {
         say(Severity::Warning, format!("fails {}{least}", failed.join(", ")), remedy_of(design));
     }
     let Some(basis) = design.basis else { return };
+    if basis.action == Action::Cantilever && panel.chosen_bottom.iter().any(Option::is_some) {
+        say(
+            Severity::Warning,
+            "bottom bars are chosen for a cantilever, which has none designed: they are not checked"
+                .to_owned(),
+            "choose the top bars of its support instead",
+        );
+    }
     for (span, length) in [(Span::Short, basis.lx_m), (Span::Long, basis.ly_m)] {
         if length > 10.0 && (span == basis.main_span || basis.case.is_some()) {
             let text = format!(
