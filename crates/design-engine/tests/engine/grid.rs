@@ -276,7 +276,12 @@ impl Grid {
             place.and_then(|(column, row)| self.one_way(column, row)).is_some_and(|way| way != axis)
         };
         let crossing = beside(Some((column, row))) || beside(self.beyond(column, row, side));
-        let shared = far.filter(|_| !joint && stated.is_none());
+        // A statement on either side ends the sharing: the other side then has no support of its own.
+        let theirs = self
+            .beyond(column, row, side)
+            .and_then(|(column, row)| self.at(column, row))
+            .and_then(|cell| cell.stated[side.opposite().index()]);
+        let shared = far.filter(|_| !joint && stated.is_none() && theirs.is_none());
         let state = match (stated, shared) {
             (Some(state), _) => state,
             (None, Some(_)) if !crossing => EdgeState::Continuous,
