@@ -11,11 +11,8 @@ const REPLACE: &str = "--replace";
 
 /// The small book's files as bytes, to see that none is touched.
 fn book_bytes(book: &Path) -> Vec<(String, Vec<u8>)> {
-    let read = |name: String| {
-        let bytes = std::fs::read(book.join(&name)).unwrap();
-        (name, bytes)
-    };
-    names_in(book).into_iter().map(read).collect()
+    let read = |name: String| std::fs::read(book.join(&name)).map(|bytes| (name, bytes));
+    names_in(book).into_iter().flat_map(read).collect()
 }
 
 #[test]

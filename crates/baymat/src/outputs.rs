@@ -1,6 +1,7 @@
 //! Where outputs go: default names, what is refused, and the test of every place before any work.
 
 use std::ffi::OsString;
+use std::io::{self, ErrorKind};
 use std::path::{Path, PathBuf};
 
 use schedule_io::atomic::{can_write, write_whole};
@@ -39,7 +40,7 @@ pub(crate) fn refuse_other_endings(path: &Path) -> Result<(), Stop> {
     if ends_in_xlsx(path) {
         return Ok(());
     }
-    let text = format!("{}: the output is an Excel workbook; let its name end in .xlsx", path.display());
+    let text = format!("{}: the output is an .xlsx workbook; let its name end in .xlsx", path.display());
     Err(Stop::refused(vec![Message::error(text)]))
 }
 
@@ -103,15 +104,26 @@ pub(crate) fn test_all(outputs: &[Output], replace: bool) -> Result<(), Stop> {
     let refusals: Vec<Message> = outputs
         .iter()
         .filter_map(|output| can_write(&output.path, replace).err())
-        .map(|error| Message::error(error.to_string()))
+        .map(|error| refusal(&error))
         .collect();
     if refusals.is_empty() { Ok(()) } else { Err(Stop::file_trouble(refusals)) }
 }
 
 /// Writes one output, whole or not at all.
 pub(crate) fn write(path: &Path, bytes: &[u8], replace: bool) -> Result<(), Stop> {
-    write_whole(path, bytes, replace)
-        .map_err(|error| Stop::file_trouble(vec![Message::error(error.to_string())]))
+    write_whole(path, bytes, replace).map_err(|error| Stop::file_trouble(vec![refusal(&error)]))
+}
+
+/// The error names the path and what is the matter; here comes what to do, where that is not plain.
+fn refusal(error: &io::Error) -> Message {
+    let remedy = match error.kind() {
+        ErrorKind::NotFound => "; make the folder first, or write elsewhere",
+        ErrorKind::PermissionDenied | ErrorKind::ReadOnlyFilesystem => "; write elsewhere",
+        ErrorKind::IsADirectory | ErrorKind::InvalidInput => "; give the name of a file",
+        ErrorKind::StorageFull | ErrorKind::QuotaExceeded => "; make room, or write elsewhere",
+        _ => "",
+    };
+    Message::error(format!("{error}{remedy}"))
 }
 
 /// What makes two paths one file: the place they lead to, or the file itself.

@@ -40,8 +40,8 @@ impl Designed {
     }
 }
 
-/// Reads, lays out and designs a floor book. `talkative`: also what is less than an error is said where
-/// the book is refused, since a misspelt heading is a note that explains the error of a missing one.
+/// Reads, lays out and designs a floor book. `talkative`: also warnings are said where
+/// the book is refused, since a misspelt heading is a warning that explains the error of a missing one.
 pub(crate) fn design_book(path: &Path, show_progress: bool, talkative: bool) -> Result<Designed, Stop> {
     let reading = during(show_progress, "reading the floor book", || read_book(path))
         .map_err(|error| Stop::file_trouble(vec![Message::error(error.to_string())]))?;
@@ -75,7 +75,9 @@ fn refuse_errors(queries: &[PlacedQuery], talkative: bool) -> Result<(), Stop> {
 
 fn book_is_wrong(queries: &[PlacedQuery], talkative: bool) -> Stop {
     let errors = queries.iter().filter(|placed| placed.query.severity == Severity::Error).count();
-    let said = |placed: &&PlacedQuery| talkative || placed.query.severity == Severity::Error;
+    // Notes do not explain an error: a table of another program may bring a hundred unknown columns.
+    let least = if talkative { Severity::Warning } else { Severity::Error };
+    let said = |placed: &&PlacedQuery| placed.query.severity <= least;
     Stop {
         exit: Exit::WrongInput,
         messages: queries.iter().filter(said).map(Message::query).collect(),

@@ -136,7 +136,7 @@ fn failing(designed: &Designed) -> Vec<String> {
         ("Unit", Align::Left),
         ("Ratio", Align::Right),
         ("Clause", Align::Left),
-        ("Passes from (mm thick)", Align::Right),
+        ("Least thickness (mm)", Align::Right),
     ]);
     let mut count = 0;
     for panel in &designed.design.panels {
@@ -194,8 +194,9 @@ fn more(count: usize) -> Option<String> {
 
 fn counts_of_queries(designed: &Designed) -> String {
     let of = |severity| designed.queries.iter().filter(|placed| placed.query.severity == severity).count();
+    let place = if designed.queries.is_empty() { "" } else { "; all are on the sheet Queries" };
     format!(
-        "Queries: {} not designed, {}, {}",
+        "Queries: {} not designed, {}, {}{place}",
         of(Severity::NotDesigned),
         counted(of(Severity::Warning), "warning"),
         counted(of(Severity::Note), "note")
