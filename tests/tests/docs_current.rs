@@ -1,6 +1,8 @@
 //! What the docs take from the code is what the code says. `cargo test -p baymat-tests --test docs_current` with
 //! `UPDATE_DOCS=1` writes the generated parts anew.
 
+#![allow(clippy::unwrap_used, reason = "what is not as it should be must fail its test")]
+
 use std::fmt::Write as _;
 use std::path::{Path, PathBuf};
 use std::process::Command;

@@ -1,5 +1,7 @@
 //! The fixture floors, start to finish: both forms of each book, its summary, its chosen fields, its exit code.
 
+#![allow(clippy::unwrap_used, reason = "what is not as it should be must fail its test")]
+
 use std::fmt::Write as _;
 use std::path::{Path, PathBuf};
 use std::process::Command;
