@@ -1,7 +1,7 @@
 //! The front of the program, as a library so that the end-to-end tests can build it too.
 //!
 //! [`main_with`] parses, runs one command and gives the exit code. One file per command; everything that
-//! is printed goes through [`console`], and the environment is read in one place, [`console::Surroundings`].
+//! is printed goes through `console`, and the environment is read in one place, `console::Surroundings`.
 
 mod check;
 mod cli;

@@ -13,24 +13,26 @@ pub struct WallEquivalents {
     pub shear_kn_m2: f64,
 }
 
-/// Factors on wall load x length/panel area that give the panel's moments under a wall at its centre: simply
-/// supported plate, Poisson's ratio 0.2, Navier's series. Wall along ly: 2.75 short, 1.9 long; along lx: 2.2 short,
-/// 3.0 ly/lx long. `axis_ratio` is ly/lx.
+/// Factors on wall load x span along it/panel area that give the panel's moments under a wall over the whole span at its
+/// centre: simply supported plate, Poisson's ratio 0.2, Navier's series. Wall along ly: 2.75 short, 1.9 long; along lx:
+/// 2.2 short, 3.0 ly/lx long. `ratio` is ly/lx.
 #[must_use]
 pub fn two_way_factors(wall_along_long_span: bool, ratio: f64) -> (f64, f64) {
     if wall_along_long_span { (2.75, 1.9) } else { (2.2, 3.0 * ratio) }
 }
 
-/// Equivalent loads on a two-way panel: `short_along` the axis of its short span, spans in m.
+/// Equivalent loads on a two-way panel: `short_along` the axis of its short span, spans in m. For moments a wall counts as
+/// if it ran over the whole span: one half as long bends the middle of the panel far more than half as much.
 #[must_use]
 pub fn two_way(walls: &[LineLoad], short_along: Axis, lx_m: f64, ly_m: f64) -> WallEquivalents {
     let mut sum = WallEquivalents::default();
     for wall in walls {
-        let mean = wall.load_kn_m * wall.length_m() / (lx_m * ly_m);
-        let (short, long) = two_way_factors(wall.along != short_along, ly_m / lx_m);
-        sum.short_kn_m2 += short * mean;
-        sum.long_kn_m2 += long * mean;
-        sum.shear_kn_m2 += mean;
+        let along_long_span = wall.along != short_along;
+        let whole = wall.load_kn_m / if along_long_span { lx_m } else { ly_m };
+        let (short, long) = two_way_factors(along_long_span, ly_m / lx_m);
+        sum.short_kn_m2 += short * whole;
+        sum.long_kn_m2 += long * whole;
+        sum.shear_kn_m2 += wall.load_kn_m * wall.length_m() / (lx_m * ly_m);
     }
     sum
 }
@@ -45,7 +47,7 @@ pub fn effective_width(width_m: f64, x_m: f64, l_m: f64, to_edges_m: [f64; 2]) -
 
 /// Equivalent load on a one-way panel spanning `l_m` along `span_axis`, `width_m` across. A wall along the span
 /// counts over the whole span on the effective width at its middle; a wall across is a point load on its effective
-/// width, made uniform so that neither free moment, fixed-end moment nor shear is less.
+/// width, made uniform so that neither free moment, fixed-end moment nor shear, of a free or built-in span, is less.
 #[must_use]
 pub fn one_way(walls: &[LineLoad], span_axis: Axis, l_m: f64, width_m: f64) -> WallEquivalents {
     let mut q = 0.0;
@@ -62,7 +64,8 @@ pub fn one_way(walls: &[LineLoad], span_axis: Axis, l_m: f64, width_m: f64) -> W
             let free = 8.0 * point * a * b / l_m.powi(3);
             let fixed_end = 12.0 * point * a * b * a.max(b) / l_m.powi(4);
             let shear = 2.0 * point * a.max(b) / (l_m * l_m);
-            free.max(fixed_end).max(shear)
+            let built_in_shear = shear * a.max(b) * (3.0 * l_m - 2.0 * a.max(b)) / (l_m * l_m);
+            free.max(fixed_end).max(shear).max(built_in_shear)
         };
     }
     WallEquivalents { short_kn_m2: q, long_kn_m2: q, shear_kn_m2: q }

@@ -206,6 +206,9 @@ fn settle_panel(
     let states = own_states(floor, panel);
     let (short_along, by_x) = short_axis(floor, panel, &states, spans, most, tolerance_m);
     let (lx_m, ly_m) = (spans[0].min(spans[1]), spans[0].max(spans[1]));
+    // The short span of a square panel that carries one way is the one that carries.
+    let square = (spans[0] - spans[1]).abs() <= tolerance_m + 1e-9 && !panel.is_loose();
+    let short_if_carrying = |axis: Axis| if square { axis } else { short_along };
     let share = |axis: Axis, widths: [f64; 2]| widths[axis as usize] / panel.span_m(axis);
     let greatest = panel.openings.iter().flat_map(|o| [Axis::X, Axis::Y].map(|axis| share(axis, o.widths_m)));
     if greatest.fold(0.0, f64::max) > GREATEST_OPENING_SHARE {
@@ -221,6 +224,7 @@ fn settle_panel(
         if panel.line_loads.iter().any(|wall| wall.along == root.span_axis()) {
             return Err("a cantilever with a wall along its span: not covered by a metre strip".to_owned());
         }
+        let short_along = short_if_carrying(root.span_axis());
         let main_span = if root.span_axis() == short_along { Span::Short } else { Span::Long };
         return Ok(Basis {
             short_along,
@@ -233,6 +237,7 @@ fn settle_panel(
         });
     }
     if let Some(axis) = one_way_axis(panel)? {
+        let short_along = short_if_carrying(axis);
         let main_span = if axis == short_along { Span::Short } else { Span::Long };
         return Ok(Basis { short_along, lx_m, ly_m, action: Action::OneWay, main_span, case: None, states });
     }

@@ -233,7 +233,7 @@ fn section(trial: &Trial, criteria: &Criteria, bars_along: Axis) -> Section {
 }
 
 /// Where a balanced midspan is below zero the span hogs throughout: a top section there, in the bars that run
-/// through from the support with less steel.
+/// through from the support with the least steel x depth.
 fn hogging_midspans(
     task: &BottomTask<'_>,
     balanced: [f64; 2],
@@ -243,15 +243,16 @@ fn hogging_midspans(
 ) {
     for span in [Span::Short, Span::Long].into_iter().filter(|span| balanced[*span as usize] < 0.0) {
         let axis = task.fixed.basis.axis_of(span);
-        let across = supports.iter().filter(|support| support.side.span_axis() == axis);
-        let least = across.min_by(|a, b| {
-            let area = |s: &SupportBars<'_>| s.bars.bar_mm * s.bars.bar_mm / s.bars.spacing_mm;
-            area(a).total_cmp(&area(b))
-        });
-        let Some(support) = least else { continue };
         let at = if span == Span::Short { Place::ShortMidspan } else { Place::LongMidspan };
+        let across = supports.iter().filter(|support| support.side.span_axis() == axis);
+        let weakest = across.min_by(|a, b| {
+            let [a, b] = [a, b].map(|support| support.task.trial(at, support.bars));
+            (a.as_provided() * a.d_mm).total_cmp(&(b.as_provided() * b.d_mm))
+        });
+        let Some(support) = weakest else { continue };
         let mut trial = support.task.trial(at, support.bars);
         trial.moment_knm_m = Some(-balanced[span as usize]);
+        trial.h_mm = task.fixed.thickness_mm;
         trial.checks(task.criteria, &mut |check| {
             if matches!(check.kind, CheckKind::Bending | CheckKind::MinimumSteel) {
                 checks.push(check);

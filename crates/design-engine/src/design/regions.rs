@@ -1,5 +1,7 @@
 //! Connected regions of top bars and the direction of their outer layer.
 
+use std::cmp::Ordering;
+
 use super::balance::SupportMoment;
 use super::fixed::Fixed;
 use crate::criteria::{Criteria, Layering};
@@ -7,7 +9,8 @@ use crate::floor::{Axis, Floor, PanelId};
 
 /// The axis of the top outer bars (T1) around each panel: one direction over each region connected by
 /// supports. By `Layering` where it names an axis; else the direction with the greater sum of support moment
-/// x length; on a tie the direction of most short spans, then of most spans that carry in the region.
+/// x length; on a tie the direction of most short spans, then of most spans that carry in the region, then of the
+/// greater length of supports that bars cross.
 pub(crate) fn t1_axes(
     floor: &Floor,
     criteria: &Criteria,
@@ -22,7 +25,9 @@ pub(crate) fn t1_axes(
         }
     }
     let mut sums = vec![[0.0_f64; 2]; floor.panels.len()];
+    let mut lengths = sums.clone();
     for (support, moment) in floor.supports.iter().zip(moments) {
+        lengths[roots.find(support.near.panel.0)][support.axis as usize] += support.length_m();
         if let Some(moment) = moment.and_then(|m| m.moment_knm_m) {
             let region = roots.find(support.near.panel.0);
             sums[region][support.axis as usize] += moment * support.length_m();
@@ -42,14 +47,22 @@ pub(crate) fn t1_axes(
                 return axis;
             }
             let root = roots.find(index);
-            let [x, y] = sums[root];
-            if (x - y).abs() > 1e-9 * x.max(y) {
-                return if x > y { Axis::X } else { Axis::Y };
+            if let Some(axis) = greater(sums[root]) {
+                return axis;
             }
-            let most_carrying = if carrying[root][1] > carrying[root][0] { Axis::Y } else { Axis::X };
+            let most_carrying = match carrying[root][0].cmp(&carrying[root][1]) {
+                Ordering::Greater => Axis::X,
+                Ordering::Less => Axis::Y,
+                Ordering::Equal => greater(lengths[root]).unwrap_or(Axis::X),
+            };
             if panel.is_loose() { most_carrying } else { most_short_spans.unwrap_or(most_carrying) }
         })
         .collect()
+}
+
+/// The axis of the greater of two sums; none where they are the same.
+fn greater([x, y]: [f64; 2]) -> Option<Axis> {
+    ((x - y).abs() > 1e-9 * x.max(y)).then_some(if x > y { Axis::X } else { Axis::Y })
 }
 
 /// Disjoint sets of panels.
