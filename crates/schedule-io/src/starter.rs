@@ -1,5 +1,5 @@
-//! The starter floor book: every sheet with its headings, drop-down lists and input notes, the criteria at
-//! their defaults, and two sample panels to overwrite.
+//! The starter floor book: every sheet with its headings, drop-down lists and input notes, the criteria with
+//! their defaults beside them, and two sample panels to overwrite.
 
 use design_engine::criteria::{Allowed, SETTINGS, Setting, Value};
 use rust_xlsxwriter::{
@@ -31,7 +31,7 @@ const READ_ME_LINES: &[(&str, bool)] = &[
     ("", false),
     ("How to fill it", true),
     (
-        "1. Criteria: change the values that differ; a blank value takes the default, and the schedule says so.",
+        "1. Criteria: fill in the values that differ from the defaults named beside them; the schedule says which were left.",
         false,
     ),
     (
@@ -235,7 +235,8 @@ fn noted(rule: DataValidation, title: &str, allowed: &str, note: &str) -> Result
         .map(|rule| rule.set_error_style(DataValidationErrorStyle::Warning))
 }
 
-/// The items of the criteria at their defaults, meaning as remark.
+/// The items of the criteria, blank: the default and the meaning as remark. What is filled in is then stated, and the
+/// cover tells it from what was left at its default.
 fn criteria(sheet: &mut Worksheet) -> Result<(), XlsxError> {
     let text = Format::new().set_num_format("@").set_align(FormatAlign::Left);
     let number = Format::new().set_align(FormatAlign::Left);
@@ -243,28 +244,27 @@ fn criteria(sheet: &mut Worksheet) -> Result<(), XlsxError> {
     sheet.set_column_width(3, 90)?;
     for (row, setting) in (HEADINGS + 1..).zip(SETTINGS) {
         sheet.write_string(row, 0, setting.item)?;
-        match starting_value(setting) {
-            Value::Number(value) => sheet.write_number_with_format(row, 1, value, &number)?,
-            Value::Blank if setting.allowed == Allowed::Date => sheet.write_blank(row, 1, &date)?,
-            Value::Blank if matches!(setting.allowed, Allowed::Number(_) | Allowed::OneOf(_)) => {
-                sheet.write_blank(row, 1, &number)?
-            }
-            value => sheet.write_string_with_format(row, 1, value_text(&value), &text)?,
+        match setting.allowed {
+            Allowed::Date => sheet.write_blank(row, 1, &date)?,
+            Allowed::Number(_) | Allowed::OneOf(_) => sheet.write_blank(row, 1, &number)?,
+            _ => sheet.write_blank(row, 1, &text)?,
         };
         sheet.write_string(row, 2, setting.unit)?;
-        sheet.write_string(row, 3, setting.meaning)?;
+        sheet.write_string(row, 3, remark(setting))?;
         let rule = noted(item_rule(setting)?, setting.item, &setting.allowed.describe(), setting.meaning)?;
         sheet.add_data_validation(row, 1, row, 1, &rule)?;
     }
     Ok(())
 }
 
-/// The default, but blank where the default follows from another item.
-fn starting_value(setting: &Setting) -> Value {
-    if ["steel_partial_factor", "bar_type_letter"].contains(&setting.key) {
-        Value::Blank
-    } else {
-        setting.default_value()
+/// What the starter says of an item: its default, where it has one, and its meaning.
+fn remark(setting: &Setting) -> String {
+    // The defaults of these follow from fy, which the meaning says.
+    let follows = ["steel_partial_factor", "bar_type_letter"].contains(&setting.key);
+    match setting.default_value() {
+        Value::Blank => setting.meaning.to_owned(),
+        _ if follows => setting.meaning.to_owned(),
+        value => format!("default {}; {}", value_text(&value), setting.meaning),
     }
 }
 
@@ -329,7 +329,11 @@ mod tests {
         assert_eq!(book.layout.gridlines.len(), 5);
         assert!(book.layout.panels.iter().all(|panel| panel.data.remarks == SAMPLE));
         let defaults: Vec<&str> = book.defaults_used.iter().map(|default| default.key).collect();
-        assert_eq!(defaults, ["steel_partial_factor", "bar_type_letter"]);
+        assert!(
+            ["fcu_n_mm2", "thickness_mm", "bar_sizes_mm", "layering"]
+                .iter()
+                .all(|key| defaults.contains(key))
+        );
     }
 
     #[test]

@@ -4,7 +4,7 @@ use super::balance::{SupportMoment, balanced_midspans};
 use super::bottom::{BottomBarsChosen, BottomTask, deflection_check};
 use super::fixed::Fixed;
 use super::section::{Trial, worst_ratio};
-use super::top::TopTask;
+use super::top::{SideTask, TopTask};
 use super::view::View;
 use crate::bs8110::cover::{DurabilityCover, durability, fire};
 use crate::bs8110::flexure::K_LIMIT;
@@ -187,8 +187,14 @@ pub(crate) fn distribution(
     best(scored).map(|(bars, _)| (bars, trial(bars)))
 }
 
-/// Where a cantilever stands out from a panel: its moment against what the panel's own dead load holds down at
-/// the far support, both as reactions there (statics).
+/// The cantilever across a support of a panel, if there is one.
+fn cantilever_beyond<'a>(support: &SupportBars<'a>, id: PanelId) -> Option<SideTask<'a>> {
+    support.task.cantilever().filter(|side| side.at.panel != id).copied()
+}
+
+/// Where a cantilever stands out from a panel, or a one-way span ends: the moment at its support against what the
+/// panel's own dead load holds down at the far support, both as reactions there (statics). A cantilever on the far
+/// side helps with its dead load alone.
 fn uplift_checks(
     view: &View<'_>,
     id: PanelId,
@@ -196,17 +202,42 @@ fn uplift_checks(
     supports: &[SupportBars<'_>],
     checks: &mut Vec<Check>,
 ) {
+    let one_way = (fixed.basis.action == Action::OneWay).then(|| fixed.basis.axis_of(fixed.basis.main_span));
     for support in supports {
-        let Some(cantilever) = support.task.cantilever().filter(|side| side.at.panel != id) else { continue };
-        let l_m = fixed.basis.length_m(fixed.basis.span_along(support.side.span_axis()));
-        let lifts = cantilever.fixed.side(cantilever.at.side) / l_m;
-        let holds = fixed.loads.dead_kn_m2 * l_m / 2.0;
         let far = support.side.opposite();
-        // A span that goes on past the far support is held down by its own hogging there.
-        if view.floor.panel(id).edge(far).state == EdgeState::Discontinuous {
-            checks.push(Check::at_most(CheckKind::Uplift, Place::Side(far), "statics", lifts, holds, "kN/m"));
+        // A span that goes on past the far support, over all of it, is held down by its own hogging there.
+        if fixed.basis.state(far) == EdgeState::Continuous {
+            continue;
         }
+        let moment = match cantilever_beyond(support, id) {
+            Some(loaded) => Some(loaded.fixed.side(loaded.at.side)),
+            None if one_way == Some(far.span_axis()) => {
+                support.task.trial(Place::Panel, support.bars).moment_knm_m
+            }
+            None => None,
+        };
+        let Some(moment) = moment else { continue };
+        let l_m = fixed.basis.length_m(fixed.basis.span_along(far.span_axis()));
+        let holds = fixed.loads.dead_kn_m2 * l_m / 2.0 + cantilever_helps(view, id, supports, far, l_m);
+        let lifts = moment / l_m;
+        checks.push(Check::at_most(CheckKind::Uplift, Place::Side(far), "statics", lifts, holds, "kN/m"));
     }
+}
+
+/// What a cantilever over the whole of a side puts on that support by its dead load, kN/m.
+fn cantilever_helps(
+    view: &View<'_>,
+    id: PanelId,
+    supports: &[SupportBars<'_>],
+    side: Side,
+    back_span_m: f64,
+) -> f64 {
+    let beyond = supports.iter().filter(|other| other.side == side);
+    let weights = beyond
+        .filter_map(|other| cantilever_beyond(other, id))
+        .map(|far| far.fixed.loads.dead_kn_m2 * far.l_m * (1.0 + far.l_m / (2.0 * back_span_m)));
+    let whole = view.floor.panel(id).edge(side).state == EdgeState::Continuous;
+    weights.reduce(f64::min).filter(|_| whole).unwrap_or(0.0)
 }
 
 fn section(trial: &Trial, criteria: &Criteria, bars_along: Axis) -> Section {

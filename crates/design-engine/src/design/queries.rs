@@ -125,7 +125,7 @@ fn remedy_of(design: &PanelDesign) -> &'static str {
     } else if failed(bars) {
         "change the chosen bars, or the sizes and spacings allowed"
     } else if failed(|kind| kind == CheckKind::Uplift) {
-        "hold the far support down, or shorten the cantilever"
+        "hold the far support down, or change the spans"
     } else {
         "see its rows on the Checks sheet; change the thickness, the bars allowed or the loads"
     }

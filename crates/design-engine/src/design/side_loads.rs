@@ -16,11 +16,11 @@ fn walls_kn_m2(view: &View<'_>, id: PanelId) -> f64 {
     panel.line_loads.iter().map(|wall| wall.load_kn_m * wall.length_m()).sum::<f64>() / panel.area_m2()
 }
 
-/// Ultimate load of a designed panel, walls in, on its effective spans, kN; 0 where it is not designed.
+/// Ultimate load of a designed panel, walls in, between its support centre lines, kN; 0 where it is not designed.
 pub(crate) fn total_ultimate_kn(view: &View<'_>, id: PanelId) -> f64 {
     view.fixed(id).map_or(0.0, |fixed| {
         let walls = view.criteria.dead_load_factor * walls_kn_m2(view, id);
-        (fixed.loads.ultimate_kn_m2 + walls) * fixed.basis.lx_m * fixed.basis.ly_m
+        (fixed.loads.ultimate_kn_m2 + walls) * view.floor.panel(id).area_m2()
     })
 }
 
@@ -47,7 +47,8 @@ pub(crate) fn side_loads(
     })
 }
 
-/// Length of slab that each side carries, m: load per metre of side over load per square metre.
+/// Length of slab that each side carries, m: load per metre of side over load per square metre. All of the slab between
+/// support centre lines comes down on them, whatever span the slab itself is designed for.
 fn lengths(
     view: &View<'_>,
     id: PanelId,
@@ -55,8 +56,8 @@ fn lengths(
     n: f64,
     moments: &dyn Fn(SupportId) -> Option<SupportMoment>,
 ) -> [Option<f64>; 4] {
-    let basis = &fixed.basis;
-    let l = basis.length_m(basis.main_span);
+    let (panel, basis) = (view.floor.panel(id), &fixed.basis);
+    let l = panel.span_m(basis.axis_of(basis.main_span));
     let ends = basis.axis_of(basis.main_span).end_sides();
     Side::ALL.map(|side| match (basis.action, basis.case) {
         (Action::Cantilever, _) => (basis.state(side) == EdgeState::Continuous).then_some(l),
@@ -68,7 +69,8 @@ fn lengths(
             let case = case.unwrap_or(PanelCase::new(2, 2));
             let continuous = basis.state(side) == EdgeState::Continuous;
             let long_edge = side.span_axis() == basis.short_along;
-            shear(case, basis.span_ratio()).edge(long_edge, continuous).map(|beta| beta * basis.lx_m)
+            let lx = panel.span_m(basis.short_along);
+            shear(case, basis.span_ratio()).edge(long_edge, continuous).map(|beta| beta * lx)
         }
     })
 }

@@ -225,7 +225,7 @@ fn say_missing(
     }
 }
 
-/// Values under no heading are said once for the sheet.
+/// Values under no heading are said once for the sheet. Between two headings they are an error: a heading was lost.
 fn say_unheaded(raw: &RawSheet, headings: &RawRow, below: &[RawRow], report: &Report) {
     let blank = |column: usize| !headings.cell(column).is_filled();
     let width = match raw.sheet {
@@ -238,11 +238,15 @@ fn say_unheaded(raw: &RawSheet, headings: &RawRow, below: &[RawRow], report: &Re
         Some((row, column))
     });
     if let Some((row, column)) = first {
-        report.note(
-            raw.place(Some(row.number), Some(column), None),
-            format!("read {} under no heading; such cells are not used", row.cell(column).shown()),
-            "",
-        );
+        let place = raw.place(Some(row.number), Some(column), None);
+        let shown = row.cell(column).shown();
+        let inside = (column + 1..headings.cells.len()).any(|right| headings.cell(right).is_filled());
+        if inside {
+            let text = format!("read {shown} in a column whose heading is blank");
+            report.error(place, text, "write the heading, or clear the column");
+        } else {
+            report.note(place, format!("read {shown} under no heading; such cells are not used"), "");
+        }
     }
 }
 

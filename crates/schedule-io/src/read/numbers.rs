@@ -74,7 +74,13 @@ fn remedy_for(text: &str) -> String {
         return if text.contains('.') || commas > 1 {
             format!("write {without} without a thousands separator")
         } else {
-            format!("write {} with a decimal point", text.replace(',', "."))
+            let point = text.replace(',', ".");
+            let (before, after) = text.trim_start_matches(['-', '+']).split_once(',').unwrap_or_default();
+            if after.len() == 3 && (1..=3).contains(&before.len()) && before != "0" {
+                format!("it may mean {without} or {point}: write it without a comma")
+            } else {
+                format!("write {point} with a decimal point")
+            }
         };
     }
     let folded = text.to_ascii_lowercase();
@@ -134,6 +140,8 @@ mod tests {
             ("1e-999", "write a number of ordinary size"),
             ("0x1F", "write a plain decimal number"),
             ("2,5", "write 2.5 with a decimal point"),
+            ("1,200", "it may mean 1200 or 1.200: write it without a comma"),
+            ("0,200", "write 0.200 with a decimal point"),
             ("1,234.5", "write 1234.5 without a thousands separator"),
             ("1,234,567", "write 1234567 without a thousands separator"),
             ("5 kN/m2", "write 5 alone: the unit belongs in the heading"),

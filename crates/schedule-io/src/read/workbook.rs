@@ -15,7 +15,7 @@ use super::report::Report;
 use super::unpacked::{NoDirectory, stated_size};
 use crate::limits;
 use crate::place::column_letters;
-use crate::sheets::SHEETS;
+use crate::sheets::{CRITERIA, GRIDLINES, SHEETS};
 
 type Book = Xlsx<Cursor<Vec<u8>>>;
 
@@ -97,6 +97,10 @@ fn known_sheets(
     }
     let mut sheets: Vec<RawSheet> = Vec::new();
     let mut unknown = Vec::new();
+    let has = |wanted: &str| names.iter().any(|name| name.trim().eq_ignore_ascii_case(wanted));
+    if has("Cover") && has("Checks") && !has(GRIDLINES.name) && !has(CRITERIA.name) {
+        return Err(cannot(path, "this is a schedule workbook", "give the floor book that it was made from"));
+    }
     let mut cells_left = limits::CELLS;
     for name in names {
         let Some(spec) = sheet_named(&name) else {

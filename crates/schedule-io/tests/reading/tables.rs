@@ -401,3 +401,12 @@ fn a_decimal_comma_belongs_to_files_with_semicolons_or_tabs() {
         ],
     );
 }
+
+#[test]
+fn values_under_a_blank_heading_between_two_others_are_refused() {
+    check(
+        &of(&[("loose_panels.csv", "Panel,Short span,Long span,,Remarks\nR1,3.1,4.2,7.5,store\n")]),
+        &["error: loose_panels.csv row 2: read \"7.5\" in a column whose heading is blank; \
+             write the heading, or clear the column"],
+    );
+}
