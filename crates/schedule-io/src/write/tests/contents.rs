@@ -18,7 +18,10 @@ fn results_stand_in_words() {
     assert_eq!(result(0), "passes");
     assert_eq!(result(2), "FAILS: shear, deflection, cover for durability");
     assert_eq!(result(3), "NOT DESIGNED: its north edge is free");
-    assert_eq!(text(&cover(&workbook, "Result of all checks")[1]), "FAILS: S3; NOT DESIGNED: S4; 1 warning to be read on the Queries sheet");
+    assert_eq!(
+        text(&cover(&workbook, "Result of all checks")[1]),
+        "FAILS: S3; NOT DESIGNED: S4; 1 warning to be read on the Queries sheet"
+    );
     let support = |row| text(&workbook.cell("Supports", row, "", "Result")).to_owned();
     assert_eq!(support(1), "passes");
     assert_eq!(support(2), "FAILS: shear (S3); NOT DESIGNED: S4");
