@@ -77,9 +77,9 @@ fn every_corner_of_all_nine_cases_has_its_state_its_steel_and_what_is_to_be_adde
             assert_eq!(found.state, state, "{continuous:?} {}", found.name());
             same(found.extent_m, 0.8);
             same(found.as_required_mm2_m, required);
-            for layer in 0..4 {
-                same(found.as_present_mm2_m[layer], present[layer]);
-                same(found.as_to_add_mm2_m[layer], (required - present[layer]).max(0.0));
+            for (layer, there) in present.into_iter().enumerate() {
+                same(found.as_present_mm2_m[layer], there);
+                same(found.as_to_add_mm2_m[layer], (required - there).max(0.0));
             }
         }
         let places: BTreeSet<String> = corners.iter().map(CornerDesign::name).collect();

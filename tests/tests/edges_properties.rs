@@ -4,11 +4,10 @@
 
 mod edges_support;
 
-use design_engine::criteria::Criteria;
 use design_engine::design_floor;
 use design_engine::query::Severity;
 use edges_support::moved::{difference, mirrored, renumbered, shifted, shuffled, turned};
-use edges_support::random::{choices, config, floor};
+use edges_support::random::{choices, config, criteria, floor};
 use floor_grid::lay_out;
 use proptest::prelude::*;
 
@@ -18,13 +17,14 @@ fn at_fault(plan: &edges_support::Plan) -> bool {
 }
 
 proptest! {
-    #![proptest_config(config(150))]
+    #![proptest_config(config(2000))]
 
     #[test]
     fn a_floor_drawn_another_way_has_the_same_steel_and_loads(mut choices in choices()) {
         let plan = floor(&mut choices);
         prop_assume!(!at_fault(&plan));
-        let design = plan.design();
+        let criteria = criteria(&mut choices);
+        let design = plan.design_by(&criteria);
         let mut moves = vec![mirrored(&plan), shifted(&plan), renumbered(&plan), shuffled(&plan, &mut choices)];
         // Where nothing but the drawing tells which span of a square panel is the short one, turning it changes it.
         let by_direction = |query: &design_engine::query::Query| query.text.contains("short span is taken along x");
@@ -32,18 +32,18 @@ proptest! {
             moves.push(turned(&plan));
         }
         for moved in moves {
-            prop_assert_eq!(difference(&design, &moved.plan.design(), &moved), None);
+            prop_assert_eq!(difference(&design, &moved.plan.design_by(&criteria), &moved), None);
         }
     }
 }
 
 proptest! {
-    #![proptest_config(config(200))]
+    #![proptest_config(config(3000))]
 
     #[test]
     fn a_floor_is_designed_in_finite_numbers(mut choices in choices()) {
         let (floor, _) = lay_out(&floor(&mut choices).0);
-        let text = format!("{:?}", design_floor(&floor, &Criteria::default()));
+        let text = format!("{:?}", design_floor(&floor, &criteria(&mut choices)));
         let words = text.split(|c: char| !c.is_alphanumeric());
         prop_assert_eq!(words.filter(|word| ["NaN", "inf"].contains(word)).count(), 0);
     }
