@@ -17,7 +17,7 @@ fn at_fault(plan: &edges_support::Plan) -> bool {
 }
 
 proptest! {
-    #![proptest_config(config(2000))]
+    #![proptest_config(config(150))]
 
     #[test]
     fn a_floor_drawn_another_way_has_the_same_steel_and_loads(mut choices in choices()) {
@@ -38,7 +38,7 @@ proptest! {
 }
 
 proptest! {
-    #![proptest_config(config(3000))]
+    #![proptest_config(config(200))]
 
     #[test]
     fn a_floor_is_designed_in_finite_numbers(mut choices in choices()) {
