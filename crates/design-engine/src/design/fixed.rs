@@ -206,7 +206,22 @@ fn one_way(
 pub(crate) fn one_way_walls(panel: &Panel, basis: &Basis) -> f64 {
     let axis = basis.axis_of(basis.main_span);
     let (l, width) = (basis.length_m(basis.main_span), panel.span_m(axis.across()));
-    wall_loads::one_way(&panel.line_loads, axis, l, width).short_kn_m2
+    // Walls are measured from the support's centre line, the effective span may begin inside it: half of the
+    // difference at each end.
+    let inside = (panel.span_m(axis) - l) / 2.0;
+    let along_span = |at: f64| (at - inside).clamp(0.0, l);
+    let walls: Vec<LineLoad> = panel
+        .line_loads
+        .iter()
+        .map(|wall| {
+            if wall.along == axis {
+                LineLoad { from_m: along_span(wall.from_m), to_m: along_span(wall.to_m), ..*wall }
+            } else {
+                LineLoad { offset_m: along_span(wall.offset_m), ..*wall }
+            }
+        })
+        .collect();
+    wall_loads::one_way(&walls, axis, l, width).short_kn_m2
 }
 
 /// A cantilever of length l: n l2/2 and n l at its root, never balanced or reduced.

@@ -275,7 +275,11 @@ fn hogging_midspans(
     for span in [Span::Short, Span::Long].into_iter().filter(|span| balanced[*span as usize] < 0.0) {
         let axis = task.fixed.basis.axis_of(span);
         let at = if span == Span::Short { Place::ShortMidspan } else { Place::LongMidspan };
-        let across = supports.iter().filter(|support| support.side.span_axis() == axis);
+        // Bars that cross without a moment do not run through.
+        let runs_through = |support: &&SupportBars<'_>| {
+            support.side.span_axis() == axis && support.task.trial(at, support.bars).moment_knm_m.is_some()
+        };
+        let across = supports.iter().filter(runs_through);
         let weakest = across.min_by(|a, b| {
             let [a, b] = [a, b].map(|support| support.task.trial(at, support.bars));
             (a.as_provided() * a.d_mm).total_cmp(&(b.as_provided() * b.d_mm))
