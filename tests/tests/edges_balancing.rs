@@ -5,7 +5,7 @@
 mod edges_support;
 
 use design_engine::check::Place;
-use design_engine::floor::{Axis, EdgeState, Side, Span, SupportKind};
+use design_engine::floor::{Axis, EdgeState, Layer, Side, Span, Spanning, SupportKind};
 use design_engine::query::Severity;
 use design_engine::result::Action;
 use edges_support::random::{choices, config, floor};
@@ -114,4 +114,45 @@ fn two_panels_balanced_by_hand() {
         0.063 * N * 16.0 - (moment - west) / 2.0,
     );
     same(floor.moment("W", Place::ShortMidspan), 0.063 * N * 16.0);
+}
+
+#[test]
+fn a_midspan_that_hogs_is_checked_with_the_bars_that_run_through_and_not_with_crossing_bars() {
+    // P, 3.2 x 6 m, between W, 6 x 6 m, which raises its west end until it hogs throughout, and O, stated to span past it and
+    // thinner: the bars over that line only cross.
+    let floor = plan(&[0.0, 6.0, 9.2, 13.2], &[0.0, 6.0])
+        .panel("W", "1-2", "A-B")
+        .imposed("W", 10.0)
+        .panel("P", "2-3", "A-B")
+        .panel("O", "3-4", "A-B")
+        .spanning("O", Spanning::OneWay(Axis::Y))
+        .with("O", |panel| panel.data.thickness_mm = 125.0)
+        .design();
+    assert!(floor.support("P", Side::East).moment_knm_m.is_none());
+    let west = floor.support("P", Side::West);
+    let top =
+        floor.panel("P").sections.iter().find(|s| s.support.is_none() && s.layer == west.layer).unwrap();
+    // Ratio 1.875, case 7: .0715 midspan, .095 at the long edge.
+    let (midspan, edge) = (0.0715 * N * 10.24, 0.095 * N * 10.24);
+    same(top.moment_knm_m.unwrap(), (west.moment_knm_m.unwrap() - edge) / 2.0 - midspan);
+    assert_eq!((top.bars, top.d_mm), (west.bars, west.d_mm));
+    let reach = west.sides.iter().find(|side| side.panel == floor.id("P")).unwrap();
+    same(reach.short_extension_m, 2.95);
+}
+
+#[test]
+fn of_two_supports_whose_bars_run_through_the_weaker_section_is_checked() {
+    // P between two like panels but for the thickness of E: the same bars lie 50 mm less deep over its line.
+    let floor = plan(&[0.0, 6.5, 9.5, 16.0], &[0.0, 5.8]).panel("W", "1-2", "A-B").panel("P", "2-3", "A-B");
+    let floor = floor.panel("E", "3-4", "A-B").with("P", |panel| panel.data.thickness_mm = 200.0);
+    for (thin, strong) in [(Side::West, "E"), (Side::East, "W")] {
+        let design = floor.clone().with(strong, |panel| panel.data.thickness_mm = 225.0).design();
+        let tops: Vec<_> = [Side::West, Side::East].map(|side| design.support("P", side)).into();
+        let weaker = tops.iter().map(|top| top.as_provided_mm2_m * top.d_mm).fold(f64::INFINITY, f64::min);
+        let own = &design.panel("P").sections;
+        let found =
+            own.iter().find(|s| s.support.is_none() && [Layer::T1, Layer::T2].contains(&s.layer)).unwrap();
+        same(found.as_provided_mm2_m * found.d_mm, weaker);
+        assert!(design.support("P", thin).d_mm < design.support("P", thin.opposite()).d_mm);
+    }
 }

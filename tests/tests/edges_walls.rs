@@ -10,10 +10,11 @@ use design_engine::bs8110::wall_loads::{
     WallEquivalents, effective_width, one_way, two_way, two_way_factors,
 };
 use design_engine::check::Place;
+use design_engine::criteria::Value;
 use design_engine::floor::{Axis, LineLoad, Side};
 use design_engine::query::Severity;
 use edges_support::random::config;
-use edges_support::{G, N, close, plan, same};
+use edges_support::{G, N, close, criteria, plan, same};
 use proptest::prelude::*;
 
 const POISSON: f64 = 0.2;
@@ -210,4 +211,28 @@ fn walls_over_a_tenth_of_the_dead_load_are_a_warning() {
     };
     same(0.1 * G * 20.0 / 4.0, 3.35);
     assert!(!heavy(3.34) && heavy(3.36));
+}
+
+#[test]
+fn walls_keep_their_place_on_the_effective_span() {
+    // 4.0 m one-way, clear span + d: both ends of the effective span lie inside the centre lines, so the wall stands as far
+    // from one as its mirror image from the other; a wall over a support is no load of the span.
+    let clear = criteria("span_basis", Value::Text("clear plus effective depth".to_owned()));
+    let moment = |offset| {
+        let floor = plan(&[0.0, 4.0], &[0.0, 9.0]).panel("P", "1-2", "A-B");
+        floor.wall("P", Axis::Y, offset, [0.0, 9.0], 5.0).design_by(&clear).moment("P", Place::ShortMidspan)
+    };
+    // d = 175 - 25 - half the smallest bar: 4.0 - 0.25 + d.
+    let l = plan(&[0.0, 4.0], &[0.0, 9.0])
+        .panel("P", "1-2", "A-B")
+        .design_by(&clear)
+        .panel("P")
+        .basis
+        .unwrap()
+        .lx_m;
+    assert!(l < 4.0);
+    same(moment(0.7), moment(3.3));
+    // A point load of 1.4 x 5 kN/m at the middle: n l2/8 + P l/4.
+    same(moment(2.0), N * l * l / 8.0 + 7.0 * l / 4.0);
+    same(moment(0.0), moment(4.0));
 }

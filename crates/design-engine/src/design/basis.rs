@@ -21,7 +21,7 @@ fn effective_spans(panel: &Panel, criteria: &Criteria) -> [f64; 2] {
         return panel.spans_m;
     }
     let smallest_bar = criteria.bar_sizes_mm.first().copied().unwrap_or(0.0);
-    let d = panel.thickness_mm - criteria.bottom_cover_mm - smallest_bar / 2.0;
+    let d = (panel.thickness_mm - criteria.bottom_cover_mm - smallest_bar / 2.0).max(0.0);
     let reduced = [Axis::X, Axis::Y].map(|axis| {
         let span = panel.span_m(axis);
         let ends = axis.end_sides().map(|side| panel.edge(side));
@@ -29,7 +29,8 @@ fn effective_spans(panel: &Panel, criteria: &Criteria) -> [f64; 2] {
             return span;
         }
         let bearings = ends.iter().map(|edge| edge.support_width_mm / 2.0).sum::<f64>();
-        span.min(span + (d - bearings) / 1000.0)
+        // Supports that meet leave no clear span to measure.
+        if bearings < 1000.0 * span { span.min(span + (d - bearings) / 1000.0) } else { span }
     });
     // The reduction is a permission: it is not taken where it would carry a panel past the two-way tables.
     let centre_ratio = long_over_short(panel.spans_m);

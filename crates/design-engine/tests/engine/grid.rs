@@ -32,6 +32,17 @@ pub(crate) struct Grid {
     pub(crate) width_mm: f64,
 }
 
+/// What a panel's side comes to.
+#[derive(Debug, Clone, Copy, PartialEq)]
+enum Verdict {
+    /// Hogging moment is carried across.
+    Carries,
+    /// Bars cross, no moment is claimed.
+    Crosses,
+    /// Nothing crosses.
+    Ends(EdgeState),
+}
+
 /// Plan sides after a quarter turn to the left: east becomes north.
 pub(crate) fn turned_side(side: Side) -> Side {
     match side {
@@ -260,48 +271,55 @@ impl Grid {
         }
     }
 
-    /// One edge of a panel; a shared support is laid by its near side (west or south of it).
+    /// What a panel's side comes to: a stated edge wins; else it carries hogging to a neighbour that takes it, with no
+    /// joint and a step in the top of at most 25 mm; bars only cross beside the side of a one-way panel.
+    fn verdict(&self, (column, row): (usize, usize), side: Side) -> Verdict {
+        let cell = self.at(column, row).unwrap();
+        if let Some(state) = cell.stated[side.index()] {
+            return if state == EdgeState::Continuous { Verdict::Carries } else { Verdict::Ends(state) };
+        }
+        let ends = Verdict::Ends(EdgeState::Discontinuous);
+        let Some(place) = self.beyond(column, row, side) else { return ends };
+        let Some(other) = self.at(place.0, place.1) else { return ends };
+        let refuses =
+            other.stated[side.opposite().index()].is_some_and(|state| state != EdgeState::Continuous);
+        let step = (cell.top_level_mm - other.top_level_mm).abs() > 25.0;
+        if refuses || step || self.joints.contains(&(column, row, side)) {
+            return ends;
+        }
+        let beside =
+            |place: (usize, usize)| self.one_way(place.0, place.1).is_some_and(|way| way != side.span_axis());
+        if beside((column, row)) || beside(place) { Verdict::Crosses } else { Verdict::Carries }
+    }
+
+    /// One edge of a panel. A support that both sides carry over is shared, its near panel west or south of it.
     fn lay_edge(
         &self,
         floor: &mut Floor,
         id: PanelId,
-        (column, row): (usize, usize),
+        place: (usize, usize),
         side: Side,
-        far: Option<PanelId>,
+        neighbour: Option<PanelId>,
     ) {
-        let stated = self.at(column, row).unwrap().stated[side.index()];
-        let joint = self.joints.contains(&(column, row, side));
-        let axis = side.span_axis();
-        let beside = |place: Option<(usize, usize)>| {
-            place.and_then(|(column, row)| self.one_way(column, row)).is_some_and(|way| way != axis)
-        };
-        let crossing = beside(Some((column, row))) || beside(self.beyond(column, row, side));
-        // A statement on either side ends the sharing: the other side then has no support of its own.
-        let theirs = self
-            .beyond(column, row, side)
-            .and_then(|(column, row)| self.at(column, row))
-            .and_then(|cell| cell.stated[side.opposite().index()]);
-        let shared = far.filter(|_| !joint && stated.is_none() && theirs.is_none());
-        let state = match (stated, shared) {
-            (Some(state), _) => state,
-            (None, Some(_)) if !crossing => EdgeState::Continuous,
-            _ => EdgeState::Discontinuous,
-        };
-        let kind = if state == EdgeState::Continuous { SupportKind::Hogging } else { SupportKind::Crossing };
-        let carried = state == EdgeState::Continuous || shared.is_some();
+        let verdict = self.verdict(place, side);
+        let beyond = self.beyond(place.0, place.1, side).filter(|_| neighbour.is_some());
+        let shared = beyond.is_some_and(|beyond| self.verdict(beyond, side.opposite()) == verdict);
         let plan = floor.panel(id).plan.unwrap();
-        let (from, to) = if axis == Axis::X { (plan.y0, plan.y1) } else { (plan.x0, plan.x1) };
-        let support = carried.then(|| {
-            let near = SupportSide { panel: id, side };
-            let other = shared.map(|panel| SupportSide { panel, side: side.opposite() });
-            if let Some(known) = floor.supports.iter().position(|s| s.far == Some(near)) {
-                return SupportId(known);
-            }
+        let (from, to) = if side.span_axis() == Axis::X { (plan.y0, plan.y1) } else { (plan.x0, plan.x1) };
+        let kind = match verdict {
+            Verdict::Carries => Some(SupportKind::Hogging),
+            Verdict::Crosses if shared => Some(SupportKind::Crossing),
+            _ => None,
+        };
+        let support = kind.map(|kind| {
+            let own = SupportSide { panel: id, side };
+            let other = neighbour.filter(|_| shared);
+            let other = other.map(|panel| SupportSide { panel, side: side.opposite() });
             let (near, far) = match other {
-                Some(other) if matches!(side, Side::West | Side::South) => (other, Some(near)),
-                other => (near, other),
+                Some(other) if matches!(side, Side::West | Side::South) => (other, Some(own)),
+                other => (own, other),
             };
-            if let Some(known) = floor.supports.iter().position(|s| s.near == near) {
+            if let Some(known) = floor.supports.iter().position(|s| (s.near, s.far) == (near, far)) {
                 return SupportId(known);
             }
             let mark = |side: SupportSide| floor.panel(side.panel).mark.clone();
@@ -309,10 +327,10 @@ impl Grid {
                 let (one, other) = (mark(near), mark(far));
                 if one < other { format!("{one}/{other}") } else { format!("{other}/{one}") }
             });
-            let support = Support {
+            floor.supports.push(Support {
                 name,
                 gridline: None,
-                axis,
+                axis: side.span_axis(),
                 from,
                 to,
                 width_mm: self.width_mm,
@@ -320,18 +338,21 @@ impl Grid {
                 near,
                 far,
                 chosen: None,
-            };
-            floor.supports.push(support);
+            });
             SupportId(floor.supports.len() - 1)
         });
         let edge = &mut floor.panels[id.0].edges[side.index()];
-        edge.state = state;
-        edge.stated = stated.is_some();
+        edge.state = match verdict {
+            Verdict::Carries => EdgeState::Continuous,
+            Verdict::Crosses => EdgeState::Discontinuous,
+            Verdict::Ends(state) => state,
+        };
+        edge.stated = self.at(place.0, place.1).unwrap().stated[side.index()].is_some();
         edge.segments = vec![Segment {
             from,
             to,
-            neighbour: far,
-            continuous: state == EdgeState::Continuous,
+            neighbour,
+            continuous: verdict == Verdict::Carries,
             support,
             why: String::new(),
         }];

@@ -68,6 +68,7 @@ proptest! {
         prop_assert_eq!(not_finite(&design), None);
         for panel in &design.panels {
             prop_assert_eq!(panel.sections.is_empty(), panel.not_designed.is_some());
+            prop_assert!(panel.basis.is_none_or(|basis| basis.lx_m > 0.0 && basis.ly_m >= basis.lx_m));
             for section in &panel.sections {
                 prop_assert!(criteria.bar_sizes_mm.iter().any(|size| (size - section.bars.bar_mm).abs() < 1e-9));
                 prop_assert!(section.bars.spacing_mm >= criteria.least_spacing_mm - 1e-9);

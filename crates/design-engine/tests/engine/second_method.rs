@@ -5,6 +5,7 @@ use design_engine::bs8110::curtailment::contraflexure;
 use design_engine::bs8110::deflection::modification_factor;
 use design_engine::bs8110::flexure::{K_LIMIT, bending};
 use design_engine::bs8110::shear::vc;
+use design_engine::bs8110::strip::{StripSpan, greatest_sagging, support_moments};
 use design_engine::bs8110::tables::PRINTED_RATIOS;
 use design_engine::criteria::Coefficients;
 use design_engine::supports::{release, stiffness};
@@ -184,4 +185,60 @@ fn contraflexure_is_the_first_root_of_the_moment_diagram() {
 fn no_contraflexure_where_the_span_hogs_throughout() {
     assert!(contraflexure(10.0, 14.0, 12.0, 5000.0).is_none());
     assert!(contraflexure(0.0, 5.0, 5.0, 5000.0).is_none());
+}
+
+/// Support moments of a strip by moment distribution to convergence: fixed-end moments w l2/12, shares by h3/l.
+fn distributed_strip(spans: &[StripSpan], loads: &[f64], built_in: [bool; 2]) -> Vec<f64> {
+    let count = spans.len();
+    let stiffness: Vec<f64> = spans.iter().map(|span| span.h_mm.powi(3) / span.l_m).collect();
+    // Clockwise moments on the two ends of each span.
+    let mut ends: Vec<[f64; 2]> = (0..count)
+        .map(|i| {
+            let fixed = loads[i] * spans[i].l_m * spans[i].l_m / 12.0;
+            [-fixed, fixed]
+        })
+        .collect();
+    for _ in 0..2000 {
+        for joint in 0..=count {
+            let (before, after) = (joint.checked_sub(1), (joint < count).then_some(joint));
+            let held = (before.is_none() && built_in[0]) || (after.is_none() && built_in[1]);
+            if held {
+                continue;
+            }
+            let at_joint = [before.map(|span| (span, 1)), after.map(|span| (span, 0))];
+            let unbalanced: f64 = at_joint.iter().flatten().map(|&(span, end)| ends[span][end]).sum();
+            let total: f64 = at_joint.iter().flatten().map(|&(span, _)| stiffness[span]).sum();
+            for &(span, end) in at_joint.iter().flatten() {
+                let share = -unbalanced * stiffness[span] / total;
+                ends[span][end] += share;
+                ends[span][1 - end] += share / 2.0;
+            }
+        }
+    }
+    (0..=count).map(|joint| if joint < count { -ends[joint][0] } else { ends[count - 1][1] }).collect()
+}
+
+#[test]
+fn strips_by_three_moment_equations_are_moment_distribution_to_convergence() {
+    let span = |l_m: f64, h_mm: f64| StripSpan { l_m, h_mm, ultimate_kn_m2: 0.0, least_kn_m2: 0.0 };
+    let spans = [span(4.2, 150.0), span(5.5, 150.0), span(3.1, 200.0), span(6.0, 175.0)];
+    let loads = [12.0, 6.5, 14.2, 9.0];
+    for built_in in [[false, false], [true, false], [false, true], [true, true]] {
+        for count in 1..=4 {
+            let direct = support_moments(&spans[..count], &loads[..count], built_in);
+            let distributed = distributed_strip(&spans[..count], &loads[..count], built_in);
+            for (direct, distributed) in direct.iter().zip(distributed) {
+                close(*direct, distributed, 1e-9);
+            }
+        }
+    }
+}
+
+#[test]
+fn the_greatest_sagging_moment_is_the_summit_of_the_diagram() {
+    for (w, l, near, far) in [(10.0, 5.0, 12.0, 20.0), (10.0, 5.0, 0.0, 31.0), (8.0, 6.0, 50.0, 40.0)] {
+        let steps = (0..=20_000).map(|i| f64::from(i) / 20_000.0 * l);
+        let moments = steps.map(|x| w * x * (l - x) / 2.0 - near * (1.0 - x / l) - far * x / l);
+        close(greatest_sagging(w, l, near, far), moments.fold(f64::NEG_INFINITY, f64::max), 1e-6);
+    }
 }

@@ -327,6 +327,12 @@ fn clear_span_plus_effective_depth_is_the_lesser_span_where_both_ends_are_discon
     let [lx, ly] = spans(&narrow);
     same(lx, 4.0);
     same(ly, 5.0);
+    // Supports that leave no clear span: there is nothing to measure, centre to centre stays.
+    let mut wide = Grid::panel(0.8, 1.0, "dddd");
+    wide.width_mm = 1000.0;
+    let [lx, ly] = spans(&wide);
+    same(lx, 0.8);
+    same(ly, 1.0);
     // Moments follow the effective span.
     let design = design_floor(&Grid::panel(3.0, 7.0, "dddd").build(), &clear);
     same(design.panels[0].sections[0].moment_knm_m.unwrap(), N * 2.87 * 2.87 / 8.0);
