@@ -4,7 +4,9 @@
 
 use design_engine::bs8110::coefficients::{MomentCoefficients, PanelCase, restrained};
 use design_engine::bs8110::one_way::SIMPLY_SUPPORTED;
-use design_engine::bs8110::strip::{SpanForces, StripSpan, analyse, greatest_sagging, support_moments};
+use design_engine::bs8110::strip::{
+    SpanForces, StripSpan, analyse, beyond_back_span, greatest_sagging, support_moments,
+};
 use design_engine::criteria::Coefficients;
 use proptest::prelude::*;
 use proptest::test_runner::RngSeed;
@@ -253,6 +255,7 @@ fn stepped(spans: &[StripSpan], built_in: [bool; 2], single_case: bool, i: usize
         midspan_hogging_knm_m: 0.0,
         ends_knm_m: [reduced(i), reduced(i + 1)],
         shears_kn_m: [0.0; 2],
+        hogging_reach: [0.0; 2],
     };
     let mut least_sagging = f64::NEG_INFINITY;
     for (loads, moments) in cases.iter().zip(&elastic) {
@@ -265,6 +268,13 @@ fn stepped(spans: &[StripSpan], built_in: [bool; 2], single_case: bool, i: usize
         }
         let hogs = |ends| -moment_at(loads[i], l, ends, l / 2.0);
         forces.midspan_hogging_knm_m = forces.midspan_hogging_knm_m.max(hogs(after)).max(0.7 * hogs(before));
+        for end in [0, 1] {
+            // The first step in from the end at which the section no longer hogs.
+            let at = |step: i32| l * f64::from(if end == 0 { step } else { 400 - step }) / 400.0;
+            let sags = (0..=400).find(|step| moment_at(loads[i], l, before, at(*step)) >= 0.0);
+            let reach = sags.map_or(1.0, |step| f64::from(step) / 400.0);
+            forces.hogging_reach[end] = forces.hogging_reach[end].max(reach);
+        }
         let shears = end_shears(loads[i], l, after[0], after[1]);
         assert!((shears[0] + shears[1] - loads[i] * l).abs() < 1e-9 * loads[i] * l);
         for end in [0, 1] {
@@ -306,6 +316,8 @@ proptest! {
             for end in [0, 1] {
                 prop_assert!(same(forces.ends_knm_m[end], expected.ends_knm_m[end]));
                 prop_assert!(same(forces.shears_kn_m[end] * spans[i].l_m, expected.shears_kn_m[end] * spans[i].l_m));
+                let stepped = expected.hogging_reach[end];
+                prop_assert!(stepped > 0.999 || (stepped - forces.hogging_reach[end]).abs() <= 1.0 / 400.0 + 1e-9);
             }
             prop_assert!(same(forces.midspan_hogging_knm_m, expected.midspan_hogging_knm_m));
             // Stepping misses the top of the parabola by less than w (l/800)^2/2.
@@ -324,5 +336,35 @@ proptest! {
         for (a, b) in before.iter().zip(&after) {
             prop_assert!((b.ends_knm_m[1] - factor * a.ends_knm_m[1]).abs() <= 1e-9 * b.ends_knm_m[1].abs().max(1.0));
         }
+    }
+}
+
+/// Beyond a back-span turned up by a cantilever's moment the slab has one slope over the far support, and none where it is
+/// built in: end rotations of a simple span, w l3/24 under its load, M l/3 and M l/6 under moments at its ends (handbook
+/// formulas, any table of beam deflections).
+#[test]
+fn beyond_a_back_span_slopes_agree_over_the_far_support() {
+    let span = |l_m, h_mm, least_kn_m2| StripSpan { l_m, h_mm, ultimate_kn_m2: 0.0, least_kn_m2 };
+    // Rotation at an end, down into the span above zero; hogging moments: at this end, at the other.
+    let turn = |s: &StripSpan, here: f64, there: f64| {
+        (s.least_kn_m2 * s.l_m.powi(3) / 24.0 - here * s.l_m / 3.0 - there * s.l_m / 6.0) / s.h_mm.powi(3)
+            * 1e6
+    };
+    for (root, back, next) in [
+        (20.0, span(4.0, 150.0, 5.0), span(6.0, 150.0, 5.0)),
+        (65.0, span(3.0, 200.0, 6.5), span(2.5, 125.0, 4.0)),
+        (5.0, span(6.0, 175.0, 7.0), span(5.0, 225.0, 8.0)),
+    ] {
+        for built_in in [false, true] {
+            let (m1, m2) = beyond_back_span(root, back, Some((next, built_in)));
+            assert!((turn(&back, m1, root) + turn(&next, m1, m2)).abs() < 1e-12);
+            if built_in {
+                assert!(turn(&next, m2, m1).abs() < 1e-12);
+            } else {
+                assert!(m2.abs() < 1e-12);
+            }
+        }
+        let (m1, _) = beyond_back_span(root, back, None);
+        assert!(turn(&back, m1, root).abs() < 1e-12);
     }
 }

@@ -15,11 +15,19 @@ pub struct OneWayCoefficients {
     pub shears: [f64; 2],
     /// Greatest hogging at midspan in any load case; 0 where there is none.
     pub midspan_hogging: f64,
+    /// How far hogging reaches from the two ends in any load case, as a share of the span; 1 where the span hogs
+    /// throughout, 0 where the simplified rules of figure 3.25 are enough (3.12.10.1).
+    pub hogging_reach: [f64; 2],
 }
 
 /// A panel simply supported at both ends: n l2/8, n l/2 (statics).
-pub const SIMPLY_SUPPORTED: OneWayCoefficients =
-    OneWayCoefficients { midspan: 0.125, ends: [0.0; 2], shears: [0.5; 2], midspan_hogging: 0.0 };
+pub const SIMPLY_SUPPORTED: OneWayCoefficients = OneWayCoefficients {
+    midspan: 0.125,
+    ends: [0.0; 2],
+    shears: [0.5; 2],
+    midspan_hogging: 0.0,
+    hogging_reach: [0.0; 2],
+};
 
 /// Greatest variation of spans (and here of loads) for Table 3.12, as a share of the greatest (3.5.2.4, 3.4.3).
 pub const GREATEST_VARIATION: f64 = 0.15;
@@ -77,5 +85,6 @@ pub fn table_3_12(index: usize, count: usize, end_continuous: [bool; 2]) -> OneW
         ends: ends.map(|end| end.0),
         shears: ends.map(|end| end.1),
         midspan_hogging: 0.0,
+        hogging_reach: [0.0; 2],
     }
 }

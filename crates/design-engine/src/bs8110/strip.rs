@@ -1,5 +1,7 @@
 //! Elastic analysis of one-way strips (3.2.1.2.2, 3.5.2.3): three-moment equations, load cases, 20 % reduction.
 
+use super::curtailment::contraflexure;
+
 /// Share of the elastic support moment that is kept (3.5.2.3).
 pub const SUPPORT_SHARE: f64 = 0.8;
 /// No section is designed for less than this share of the elastic envelope (3.2.2.1 condition 3).
@@ -29,6 +31,9 @@ pub struct SpanForces {
     pub ends_knm_m: [f64; 2],
     /// Greatest shears at the two ends, kN/m, whichever their direction: an end may be held down in some case.
     pub shears_kn_m: [f64; 2],
+    /// How far hogging reaches from the two ends before any reduction, as a share of the span: the furthest of all
+    /// cases; 1 where some case hogs throughout.
+    pub hogging_reach: [f64; 2],
 }
 
 /// Elastic hogging moments at the supports of a strip, kNm/m, under one load per span, by the three-moment
@@ -113,6 +118,7 @@ fn span_forces(
         midspan_hogging_knm_m: 0.0,
         ends_knm_m: [reduced[i], reduced[i + 1]],
         shears_kn_m: [0.0; 2],
+        hogging_reach: [0.0; 2],
     };
     for (loads, moments) in cases.iter().zip(elastic) {
         let w = loads[i];
@@ -123,9 +129,39 @@ fn span_forces(
         let hogging = ((near + far) / 2.0 - w * l * l / 8.0).max(LEAST_SHARE * elastic_hogging);
         forces.sagging_knm_m = forces.sagging_knm_m.max(sagging);
         forces.midspan_hogging_knm_m = forces.midspan_hogging_knm_m.max(hogging);
+        let ends = [moments[i], moments[i + 1]];
+        for (end, reach) in forces.hogging_reach.iter_mut().enumerate() {
+            *reach = reach.max(hogging_reach(w * l * l / 8.0, ends[end], ends[1 - end]));
+        }
         let tilt = (near - far) / l;
         forces.shears_kn_m[0] = forces.shears_kn_m[0].max((w * l / 2.0 + tilt).abs());
         forces.shears_kn_m[1] = forces.shears_kn_m[1].max((w * l / 2.0 - tilt).abs());
     }
     forces
+}
+
+/// How far hogging reaches from an end with a hogging moment `near`, as a share of the span; 0 where it does not hog,
+/// 1 where the whole span does. `free_moment` is w l2/8.
+#[must_use]
+pub fn hogging_reach(free_moment: f64, near: f64, far: f64) -> f64 {
+    if near <= 0.0 { 0.0 } else { contraflexure(free_moment, near, far, 1.0).unwrap_or(1.0) }
+}
+
+/// Moments at the two supports beyond a back-span that a cantilever's moment turns up, kNm/m (hogging above zero), by the
+/// three-moment equations: at the far support of the back-span, and at the end of the span after it. Each span carries
+/// its least load. The end of the second span is simple or built in; with no second span known the far support is built
+/// in.
+#[must_use]
+pub fn beyond_back_span(root: f64, back: StripSpan, next: Option<(StripSpan, bool)>) -> (f64, f64) {
+    let load = |span: &StripSpan| span.least_kn_m2 * span.l_m * span.l_m / 4.0;
+    let Some((next, end_built_in)) = next else { return ((load(&back) - root) / 2.0, 0.0) };
+    let [f_back, f_next] = [back, next].map(|span| span.l_m / span.h_mm.powi(3));
+    let right = load(&back) * f_back + load(&next) * f_next - root * f_back;
+    if end_built_in {
+        // The built-in end: 2 m2 + m1 = w l2/4.
+        let m1 = (right - load(&next) * f_next / 2.0) / (2.0 * (f_back + f_next) - f_next / 2.0);
+        (m1, (load(&next) - m1) / 2.0)
+    } else {
+        (right / (2.0 * (f_back + f_next)), 0.0)
+    }
 }

@@ -33,6 +33,9 @@ pub(crate) struct Fixed {
     pub(crate) basic_span_depth: f64,
     /// Greatest hogging at midspan in any load case of a strip, kNm/m; 0 where there is none.
     pub(crate) midspan_hogging_knm_m: f64,
+    /// How far hogging reaches in from each side in any load case of a strip, m from the support's centre line; 0 where
+    /// the simplified rules are enough.
+    pub(crate) hogging_reach_m: [f64; 4],
 }
 
 impl Fixed {
@@ -133,6 +136,7 @@ fn two_way(panel: &Panel, thickness_mm: f64, basis: Basis, loads: LoadBuildUp, c
         support_beta_b: BETA_B_TWO_WAY_SUPPORT,
         basic_span_depth: basic(&basis),
         midspan_hogging_knm_m: 0.0,
+        hogging_reach_m: [0.0; 4],
     }
 }
 
@@ -175,13 +179,16 @@ fn one_way(
     midspan_coefficient[basis.main_span as usize] = Some(coefficients.midspan);
     let mut side_coefficient = [None; 4];
     let mut side_shear_kn_m = [None; 4];
+    let mut hogging_reach_m = [0.0; 4];
     for (end, side) in basis.axis_of(basis.main_span).end_sides().into_iter().enumerate() {
         let mut shear = coefficients.shears[end];
         if basis.state(side) == EdgeState::Continuous {
             side_coefficient[side.index()] = Some(coefficients.ends[end]);
+            hogging_reach_m[side.index()] = coefficients.hogging_reach[end] * l;
         } else if let (true, Some(made)) = (carries_in_part(panel, &basis, side), place.made_continuous[end])
         {
             side_coefficient[side.index()] = Some(made.moment);
+            hogging_reach_m[side.index()] = made.reach * l;
             shear = shear.max(made.shear);
         }
         side_shear_kn_m[side.index()] = Some(shear * n * l);
@@ -199,6 +206,7 @@ fn one_way(
         support_beta_b: BETA_B_REDUCED_SUPPORT,
         basic_span_depth: basic(&basis),
         midspan_hogging_knm_m: coefficients.midspan_hogging * n * l * l,
+        hogging_reach_m,
     }
 }
 
@@ -256,5 +264,6 @@ fn cantilever(
         support_beta_b: BETA_B_MIDSPAN,
         basic_span_depth: deflection::BASIC_CANTILEVER,
         midspan_hogging_knm_m: 0.0,
+        hogging_reach_m: [0.0; 4],
     }
 }

@@ -9,6 +9,7 @@ mod openings;
 mod panel;
 mod queries;
 mod regions;
+mod roots;
 mod section;
 mod side_loads;
 mod strips;
@@ -56,6 +57,12 @@ pub fn design_floor(floor: &Floor, criteria: &Criteria) -> FloorDesign {
     let view = View { floor, criteria, fixed: &fixed, swap: None };
     let moments: Vec<Option<SupportMoment>> =
         floor.supports.par_iter().map(|support| support_moment(&view, support)).collect();
+    let shears: Vec<_> = (0..fixed.len())
+        .into_par_iter()
+        .map(|index| roots::final_shears(&view, PanelId(index), &|id| moments[id.0]))
+        .collect();
+    let fixed = with_shears(&fixed, &shears);
+    let view = View { fixed: &fixed, ..view };
     let most = basis::direction_of_most_short_spans(floor, criteria.plan_tolerance_mm / 1000.0);
     let t1_axes = regions::t1_axes(floor, criteria, &fixed, &moments, most);
 
@@ -81,6 +88,14 @@ pub fn design_floor(floor: &Floor, criteria: &Criteria) -> FloorDesign {
     queries.extend(queries::of_design(floor, criteria, &panels, &supports));
     let assumptions = queries::assumptions(floor, criteria, &panels);
     FloorDesign { panels, supports, queries, assumptions }
+}
+
+/// The same panels with other shears at their sides.
+fn with_shears(fixed: &[Option<Fixed>], shears: &[[Option<f64>; 4]]) -> Vec<Option<Fixed>> {
+    let one = |(fixed, shears): (&Option<Fixed>, &[Option<f64>; 4])| {
+        fixed.map(|fixed| Fixed { side_shear_kn_m: *shears, ..fixed })
+    };
+    fixed.iter().zip(shears).map(one).collect()
 }
 
 /// Takes one-way panels through their strips; those of a strip that cannot be designed lose their basis.

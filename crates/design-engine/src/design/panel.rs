@@ -9,6 +9,7 @@ use super::view::View;
 use crate::bs8110::cover::{DurabilityCover, durability, fire};
 use crate::bs8110::flexure::K_LIMIT;
 use crate::bs8110::spacing::BETA_B_MIDSPAN;
+use crate::bs8110::strip::{StripSpan, beyond_back_span};
 use crate::check::{Check, CheckKind, Place};
 use crate::choose::{Score, best, cost};
 use crate::criteria::Criteria;
@@ -194,7 +195,8 @@ fn cantilever_beyond<'a>(support: &SupportBars<'a>, id: PanelId) -> Option<SideT
 
 /// Where a cantilever stands out from a panel, or a one-way span ends: the moment at its support against what the
 /// panel's own dead load holds down at the far support, both as reactions there (statics). A cantilever on the far
-/// side helps with its dead load alone.
+/// side helps with its dead load alone; a span that goes on there by the three-moment equations, its far end simple
+/// where it is discontinuous and built in elsewhere.
 fn uplift_checks(
     view: &View<'_>,
     id: PanelId,
@@ -205,23 +207,59 @@ fn uplift_checks(
     let one_way = (fixed.basis.action == Action::OneWay).then(|| fixed.basis.axis_of(fixed.basis.main_span));
     for support in supports {
         let far = support.side.opposite();
-        // A span that goes on past the far support, over all of it, is held down by its own hogging there.
-        if fixed.basis.state(far) == EdgeState::Continuous {
-            continue;
-        }
         let moment = match cantilever_beyond(support, id) {
             Some(loaded) => Some(loaded.fixed.side(loaded.at.side)),
-            None if one_way == Some(far.span_axis()) => {
+            // A strip's interior supports keep their dead load.
+            None if one_way == Some(far.span_axis()) && fixed.basis.state(far) != EdgeState::Continuous => {
                 support.task.trial(Place::Panel, support.bars).moment_knm_m
             }
             None => None,
         };
         let Some(moment) = moment else { continue };
         let l_m = fixed.basis.length_m(fixed.basis.span_along(far.span_axis()));
-        let holds = fixed.loads.dead_kn_m2 * l_m / 2.0 + cantilever_helps(view, id, supports, far, l_m);
-        let lifts = moment / l_m;
+        let (lifts, holds) = if fixed.basis.state(far) == EdgeState::Continuous {
+            uplift_at_continuous(view, id, fixed, far, moment)
+        } else {
+            let helps = cantilever_helps(view, id, supports, far, l_m);
+            (moment / l_m, fixed.loads.dead_kn_m2 * l_m / 2.0 + helps)
+        };
         checks.push(Check::at_most(CheckKind::Uplift, Place::Side(far), "statics", lifts, holds, "kN/m"));
     }
+}
+
+/// What lifts and what holds down a support that the back-span of a cantilever is continuous over, kN/m: the worst of
+/// the spans that go on there.
+fn uplift_at_continuous(view: &View<'_>, id: PanelId, fixed: &Fixed, far: Side, root: f64) -> (f64, f64) {
+    let span = |fixed: &Fixed| StripSpan {
+        l_m: fixed.basis.length_m(fixed.basis.span_along(far.span_axis())),
+        h_mm: fixed.thickness_mm,
+        ultimate_kn_m2: fixed.loads.ultimate_kn_m2,
+        least_kn_m2: fixed.loads.dead_kn_m2,
+    };
+    let back = span(fixed);
+    let segments = view.floor.panel(id).edge(far).segments.iter();
+    let beyond: Vec<&Fixed> = segments.filter_map(|segment| view.fixed(segment.neighbour?)).collect();
+    let next: Vec<Option<(StripSpan, bool)>> = if beyond.is_empty() {
+        vec![None]
+    } else {
+        let on = |next: &&Fixed| Some((span(next), next.basis.state(far) == EdgeState::Continuous));
+        beyond.iter().map(on).collect()
+    };
+    let reaction = |next: Option<(StripSpan, bool)>| {
+        let (m1, m2) = beyond_back_span(root, back, next);
+        let load = |span: &StripSpan| span.least_kn_m2 * span.l_m / 2.0;
+        // Reaction at the far support from each span: w l/2 +- the moments over the span.
+        let mut parts = vec![load(&back), -root / back.l_m, m1 / back.l_m];
+        if let Some((next, _)) = next {
+            parts.extend([load(&next), m1 / next.l_m, -m2 / next.l_m]);
+        }
+        let lifts: f64 = -parts.iter().filter(|part| **part < 0.0).sum::<f64>();
+        (lifts, parts.iter().filter(|part| **part > 0.0).sum::<f64>())
+    };
+    next.into_iter()
+        .map(reaction)
+        .max_by(|a, b| (a.0 / a.1.max(1e-9)).total_cmp(&(b.0 / b.1.max(1e-9))))
+        .unwrap_or((0.0, 0.0))
 }
 
 /// What a cantilever over the whole of a side puts on that support by its dead load, kN/m.

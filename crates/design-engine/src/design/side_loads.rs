@@ -1,7 +1,8 @@
 //! Loads on the supports along a panel's sides (3.5.3.7).
 
-use super::balance::{SupportMoment, new_side_moments};
+use super::balance::SupportMoment;
 use super::fixed::Fixed;
+use super::roots::{RootMoment, mean_moment_knm_m, mean_root};
 use super::view::View;
 use crate::bs8110::coefficients::{PanelCase, shear};
 use crate::floor::{EdgeState, PanelId, Side, SupportId};
@@ -26,7 +27,8 @@ pub(crate) fn total_ultimate_kn(view: &View<'_>, id: PanelId) -> f64 {
 
 /// Loads on the four sides. Two-way: `beta_v` n lx by the panel's own case (free corners: case 9), the true weight of
 /// walls in n. One-way: statics of the span fully loaded with its final support moments, so that the two ends carry
-/// the whole load. Cantilever: all of it at the root.
+/// the whole load. Cantilever: all of it at the root; its moment adds to the reaction of its back-span there and takes
+/// the same from the far side.
 pub(crate) fn side_loads(
     view: &View<'_>,
     id: PanelId,
@@ -37,11 +39,22 @@ pub(crate) fn side_loads(
     let imposed = fixed.loads.imposed_kn_m2;
     let n = view.criteria.dead_load_factor * dead + view.criteria.imposed_load_factor * imposed;
     let share = if fixed.basis.case.is_some() { TWO_WAY_SHARE } else { 1.0 };
-    lengths(view, id, fixed, n, moments).map(|length| {
-        length.map(|length| SideLoad {
-            dead_kn_m: dead * length,
-            imposed_kn_m: imposed * length,
-            ultimate_kn_m: n * length,
+    let roots = Side::ALL.map(|side| match fixed.basis.action {
+        Action::Cantilever => RootMoment::default(),
+        _ => mean_root(view, id, side),
+    });
+    let lengths = lengths(view, id, fixed, n, moments);
+    Side::ALL.map(|side| {
+        let length = lengths[side.index()]?;
+        let (own, far) = (roots[side.index()], roots[side.opposite().index()]);
+        let per_metre = 1.0 / (view.floor.panel(id).span_m(side.span_axis()) * share);
+        let dead_kn_m = dead * length + (own.dead_knm_m - far.dead_knm_m) * per_metre;
+        let imposed_kn_m = imposed * length + (own.imposed_knm_m - far.imposed_knm_m) * per_metre;
+        Some(SideLoad {
+            dead_kn_m,
+            imposed_kn_m,
+            ultimate_kn_m: view.criteria.dead_load_factor * dead_kn_m
+                + view.criteria.imposed_load_factor * imposed_kn_m,
             loaded_share: share,
         })
     })
@@ -62,7 +75,7 @@ fn lengths(
     Side::ALL.map(|side| match (basis.action, basis.case) {
         (Action::Cantilever, _) => (basis.state(side) == EdgeState::Continuous).then_some(l),
         (Action::OneWay, _) => ends.contains(&side).then(|| {
-            let at = |side: Side| new_side_moments(view, id, side, moments).1;
+            let at = |side: Side| mean_moment_knm_m(view, id, side, moments);
             l / 2.0 + (at(side) - at(side.opposite())) / (l * n)
         }),
         (_, case) => {

@@ -17,6 +17,8 @@ use crate::result::{Action, LoadBuildUp};
 pub(crate) struct EndCoefficients {
     pub(crate) moment: f64,
     pub(crate) shear: f64,
+    /// How far hogging reaches into the span, as a share of it.
+    pub(crate) reach: f64,
 }
 
 /// A one-way panel's place in its strip.
@@ -163,14 +165,18 @@ impl<'a> Strip<'a> {
             (0..self.panels.len()).map(|i| table_3_12(i, self.panels.len(), stated)).collect::<Vec<_>>()
         });
         let analysed = table.is_none();
-        let coefficients = table.unwrap_or_else(|| self.analysis(built_in));
+        let coefficients = table.unwrap_or_else(|| self.envelope(built_in));
         let made = [0, 1].map(|end| {
             matches!(self.ends[end], Beyond::InPart).then(|| {
                 let mut built_in = built_in;
                 built_in[end] = true;
                 let all = self.analysis(built_in);
                 let own = if end == 0 { all[0] } else { all[all.len() - 1] };
-                EndCoefficients { moment: own.ends[end], shear: own.shears[end] }
+                EndCoefficients {
+                    moment: own.ends[end],
+                    shear: own.shears[end],
+                    reach: own.hogging_reach[end],
+                }
             })
         });
         let last = self.panels.len() - 1;
@@ -182,6 +188,29 @@ impl<'a> Strip<'a> {
             })
         };
         coefficients.into_iter().enumerate().map(place).collect()
+    }
+
+    /// Coefficients with the ends that meet two-way panels built in. Their release turns these ends: the interior
+    /// supports take the greater of the ends built in and the ends simple.
+    fn envelope(&self, built_in: [bool; 2]) -> Vec<OneWayCoefficients> {
+        let mut coefficients = self.analysis(built_in);
+        let turning = [0, 1].map(|end| matches!(self.ends[end], Beyond::TwoWay));
+        let last = self.panels.len() - 1;
+        if last == 0 || turning == [false, false] {
+            return coefficients;
+        }
+        let turned = self.analysis([0, 1].map(|end| built_in[end] && !turning[end]));
+        for (i, (own, turned)) in coefficients.iter_mut().zip(turned).enumerate() {
+            for end in 0..2 {
+                let at_strip_end = (end == 0 && i == 0) || (end == 1 && i == last);
+                if !at_strip_end {
+                    own.ends[end] = own.ends[end].max(turned.ends[end]);
+                    own.shears[end] = own.shears[end].max(turned.shears[end]);
+                    own.hogging_reach[end] = own.hogging_reach[end].max(turned.hogging_reach[end]);
+                }
+            }
+        }
+        coefficients
     }
 
     /// Coefficients from elastic analysis with the reduction of 3.5.2.3.
@@ -200,6 +229,7 @@ impl<'a> Strip<'a> {
                     ends: forces.ends_knm_m.map(|m| m / (unit * span.l_m)),
                     shears: forces.shears_kn_m.map(|v| v / unit),
                     midspan_hogging: forces.midspan_hogging_knm_m / (unit * span.l_m),
+                    hogging_reach: forces.hogging_reach,
                 }
             })
             .collect()

@@ -1,8 +1,9 @@
 //! The same panel at another thickness: what governs its thickness, and the least one that would do.
 
 use super::balance::{SupportMoment, support_moment};
-use super::fixed::fix;
+use super::fixed::{Fixed, fix};
 use super::panel::{SupportBars, assemble, assemble_cantilever, bottom_task, governing, supports_of};
+use super::roots::final_shears;
 use super::strips::StripPlace;
 use super::top::TopTask;
 use super::view::View;
@@ -34,8 +35,8 @@ impl PanelInPlace<'_> {
     fn checks_at(&self, thickness_mm: f64) -> Vec<Check> {
         let Some(now) = self.view.fixed(self.id) else { return Vec::new() };
         let panel = self.view.floor.panel(self.id);
-        let fixed = fix(panel, thickness_mm, now.basis, self.strip, self.view.criteria);
-        let view = View { swap: Some((self.id, &fixed)), ..self.view };
+        let coefficients = fix(panel, thickness_mm, now.basis, self.strip, self.view.criteria);
+        let view = View { swap: Some((self.id, &coefficients)), ..self.view };
         let own: Vec<(SupportId, Option<SupportMoment>)> = supports_of(&view, self.id)
             .into_iter()
             .map(|(_, id)| (id, support_moment(&view, view.floor.support(id))))
@@ -43,6 +44,8 @@ impl PanelInPlace<'_> {
         let moments = |id: SupportId| {
             own.iter().find(|(known, _)| *known == id).map_or_else(|| self.moments[id.0], |(_, m)| *m)
         };
+        let fixed = Fixed { side_shear_kn_m: final_shears(&view, self.id, &moments), ..coefficients };
+        let view = View { swap: Some((self.id, &fixed)), ..self.view };
         let supports: Vec<SupportBars<'_>> = supports_of(&view, self.id)
             .into_iter()
             .filter_map(|(side, id)| {

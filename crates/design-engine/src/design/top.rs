@@ -3,6 +3,7 @@
 use super::balance::{SupportMoment, balanced_midspans, new_side_moments};
 use super::bottom::{deflection_check, shear_check};
 use super::fixed::Fixed;
+use super::roots::greatest_moment_knm_m;
 use super::section::{Trial, worst_ratio};
 use super::view::View;
 use crate::bs8110::curtailment::{contraflexure, round_up_50, top_extents};
@@ -19,12 +20,6 @@ const CROSSING_SHARE: f64 = 0.3;
 /// Spans within this of each other allow alternate reversed bars.
 const REVERSED_SPAN_VARIATION: f64 = 0.15;
 
-/// Distance from the root at which a back-span stops hogging under the cantilever's moment and its own 1.0 gk, m: x =
-/// 2 M/(g l) (statics). Not less than l: it hogs throughout and its far support lifts.
-pub(crate) fn back_span_contraflexure(cantilever_knm_m: f64, back_span: &Fixed, l_m: f64) -> f64 {
-    2.0 * cantilever_knm_m / (back_span.loads.dead_kn_m2 * l_m)
-}
-
 /// One side of a support being designed.
 #[derive(Clone, Copy)]
 pub(crate) struct SideTask<'a> {
@@ -37,6 +32,8 @@ pub(crate) struct SideTask<'a> {
     far_knm_m: f64,
     midspan_after_knm_m: f64,
     clear_span_mm: f64,
+    /// Greatest final moment at the far end, cantilevers counted, kNm/m.
+    far_hogging_knm_m: f64,
 }
 
 /// A support whose top bars are wanted.
@@ -183,9 +180,31 @@ impl<'a> TopTask<'a> {
             return run_through;
         }
         let table = fixed.side(side.at.side);
-        if side.near_knm_m <= RISE_THAT_LENGTHENS * table * (1.0 + 1e-9) {
+        let in_strip = 1000.0 * fixed.hogging_reach_m[side.at.side.index()];
+        if in_strip >= side.l_m * 1000.0 * (1.0 - 1e-9) {
+            return run_through;
+        }
+        let rose = side.near_knm_m > RISE_THAT_LENGTHENS * table * (1.0 + 1e-9);
+        let Some(x0) = (if rose { self.contraflexure(side) } else { Some(0.0) }) else {
+            return run_through;
+        };
+        let past = x0.max(in_strip) + trial.d_mm.max(12.0 * trial.bars.bar_mm);
+        let to_face = self.support.width_mm / 2.0;
+        let long = round_up_50(simplified.1.max(past - to_face)).min(run_through.long);
+        if !rose && long <= plain.long {
             return plain;
         }
+        Reach {
+            long,
+            short: round_up_50(simplified.0.max(past / 2.0 - to_face)).min(run_through.long),
+            from_contraflexure: true,
+        }
+    }
+
+    /// Point of contraflexure of a side's span with its final moments (3.5.3.6 e), mm from the support's centre line;
+    /// none where the span hogs throughout.
+    fn contraflexure(&self, side: &SideTask<'_>) -> Option<f64> {
+        let fixed = side.fixed;
         let span = fixed.basis.span_along(side.at.side.span_axis());
         let free = if fixed.basis.action == Action::OneWay {
             // A strip's greatest sagging need not be at midspan.
@@ -194,16 +213,7 @@ impl<'a> TopTask<'a> {
             let ends = [side.at.side, side.at.side.opposite()].map(|end| fixed.side_counted(end));
             fixed.midspan(span) + (ends[0] + ends[1]) / 2.0
         };
-        let Some(x0) = contraflexure(free, side.near_knm_m, side.far_knm_m, side.l_m * 1000.0) else {
-            return run_through;
-        };
-        let past = x0 + trial.d_mm.max(12.0 * trial.bars.bar_mm);
-        let to_face = self.support.width_mm / 2.0;
-        Reach {
-            long: round_up_50(simplified.1.max(past - to_face)).min(run_through.long),
-            short: round_up_50(simplified.0.max(past / 2.0 - to_face)).min(run_through.long),
-            from_contraflexure: true,
-        }
+        contraflexure(free, side.near_knm_m, side.far_knm_m, side.l_m * 1000.0)
     }
 
     /// The side that is a cantilever, if one is.
@@ -220,19 +230,22 @@ impl<'a> TopTask<'a> {
 
     /// Bars of a cantilever of length k in its back-span of length l, from the face: all to max(0.75 k, 0.15 l, 45
     /// sizes), half to max(1.5 k, 0.3 l), and to max(d, 12 sizes) past the contraflexure under the cantilever fully
-    /// loaded and the back-span with 1.0 gk. No contraflexure: all run the whole back-span.
+    /// loaded, the back-span with 1.0 gk and the far support with its greatest moment; all of them to max(d, 12 sizes)
+    /// past half of that, where the moment has fallen to half (3.12.9.1). No contraflexure: all run the whole back-span.
     fn reach_in_back_span(&self, side: &SideTask<'_>, cantilever: &SideTask<'_>, trial: &Trial) -> Reach {
         let (k, l) = (cantilever.l_m * 1000.0, side.l_m * 1000.0);
         let bar = trial.bars.bar_mm;
         let all = (0.75 * k).max(0.15 * l).max(45.0 * bar);
         let whole = round_up_50(side.clear_span_mm + self.support.width_mm / 2.0);
-        let x0 =
-            1000.0 * back_span_contraflexure(cantilever.fixed.side(cantilever.at.side), side.fixed, side.l_m);
-        if x0 >= l {
+        let free = side.fixed.loads.dead_kn_m2 * side.l_m * side.l_m / 8.0;
+        let root = cantilever.fixed.side(cantilever.at.side);
+        let x0 = contraflexure(free, root, side.far_hogging_knm_m, l);
+        let Some(x0) = x0.filter(|x0| *x0 < l * (1.0 - 1e-9)) else {
             return Reach { long: whole, short: whole, from_contraflexure: true };
-        }
-        let past = x0 + trial.d_mm.max(12.0 * bar) - self.support.width_mm / 2.0;
-        let half = (1.5 * k).max(0.3 * l).max(past).max(all);
+        };
+        let past = |x: f64| x + trial.d_mm.max(12.0 * bar) - self.support.width_mm / 2.0;
+        let all = all.max(past(x0 / 2.0));
+        let half = (1.5 * k).max(0.3 * l).max(past(x0)).max(all);
         Reach {
             long: round_up_50(half).min(whole),
             short: round_up_50(all).min(whole),
@@ -330,5 +343,6 @@ fn side_task<'a>(
         far_knm_m: new_side_moments(view, at.panel, at.side.opposite(), moments).1,
         midspan_after_knm_m: balanced_midspans(view, at.panel, moments)[span as usize],
         clear_span_mm: (panel.span_m(axis) * 1000.0 - bearings).max(0.0),
+        far_hogging_knm_m: greatest_moment_knm_m(view, at.panel, at.side.opposite(), moments),
     }
 }
