@@ -2,6 +2,8 @@
 
 use std::cmp::Ordering;
 
+use crate::bs8110::flexure::steel_area;
+use crate::bs8110::spacing::{BETA_B_MIDSPAN, greatest_clear, least_gap};
 use crate::check::RATIO_TOLERANCE;
 use crate::criteria::Criteria;
 use crate::floor::BarChoice;
@@ -99,6 +101,31 @@ fn pair_preference(a: &[(BarChoice, Score); 2], b: &[(BarChoice, Score); 2]) -> 
         .then(tied(cost(a), cost(b)))
         .then(larger_spacing_then_smaller_size(a[0].0, b[0].0))
         .then(larger_spacing_then_smaller_size(a[1].0, b[1].0))
+}
+
+/// Bars that give an area under no moment of their own (distribution, edges, torsion): the least steel that meets the area
+/// and the spacing rules, no size over `greatest_mm`; where none does, the most steel of those sizes. `h_mm` is the
+/// thickness, `cover_mm` the cover to these bars.
+#[must_use]
+pub fn nominal_bars(
+    criteria: &Criteria,
+    as_required_mm2_m: f64,
+    greatest_mm: f64,
+    h_mm: f64,
+    cover_mm: f64,
+) -> Option<BarChoice> {
+    let smallest = criteria.bar_sizes_mm.first().copied()?;
+    let allowed = |bars: &BarChoice| bars.bar_mm <= greatest_mm.max(smallest) + 1e-9;
+    let scored = candidates(criteria).into_iter().filter(allowed).map(|bars| {
+        let area = steel_area(bars.bar_mm, bars.spacing_mm);
+        let d = (h_mm - cover_mm - bars.bar_mm / 2.0).max(1.0);
+        let clear = greatest_clear(h_mm, d, area, criteria.fy_n_mm2, BETA_B_MIDSPAN);
+        let gap =
+            least_gap(criteria.maximum_aggregate_mm, bars.bar_mm) / (bars.spacing_mm - bars.bar_mm).max(1.0);
+        let worst_ratio = (as_required_mm2_m / area).max((bars.spacing_mm - bars.bar_mm) / clear).max(gap);
+        (bars, Score { worst_ratio, cost_kg: cost(area, 1.0, 1.0) })
+    });
+    best(scored).map(|(bars, _)| bars)
 }
 
 /// Mass of bars over a strip of slab, kg: area per metre x mean length x width x 7850 kg/m3. The one cost used by

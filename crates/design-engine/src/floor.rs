@@ -298,6 +298,8 @@ pub struct Segment {
     pub neighbour: Option<PanelId>,
     /// Whether hogging moment is carried across it.
     pub continuous: bool,
+    /// Whether a movement joint runs along it: no bar crosses.
+    pub joint: bool,
     /// The support whose top bars cross it, if any do.
     pub support: Option<SupportId>,
     /// Reason in words, for example `shared with S4 over 6.00 m; no joint; level difference 0`.

@@ -1,5 +1,6 @@
 //! What the design of a floor gives: panels with their sections and checks, supports with their bars.
 
+use crate::bs8110::anchorage::EndAnchorageWorking;
 use crate::bs8110::coefficients::PanelCase;
 use crate::bs8110::corners::CornerState;
 use crate::check::{Check, CheckKind, Place};
@@ -228,6 +229,44 @@ pub struct OpeningDesign {
     pub within_d_of_support: bool,
 }
 
+/// Bottom bars along one span.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct BottomBarsDesign {
+    /// The bars of the middle strip.
+    pub bars: BarChoice,
+    /// The bars of the edge strips where they differ (3.5.3.5).
+    pub edge_strip: Option<BarChoice>,
+    /// True where alternate bars stop short of the supports.
+    pub alternate_stop: bool,
+    /// Anchorage at the lesser and the greater end; none where the bars run to the centre line of a continuous support, or
+    /// to a free edge.
+    pub ends: [Option<EndAnchorageWorking>; 2],
+}
+
+/// Top bars along a discontinuous edge, at right angles to it (3.12.10.3.2).
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct EdgeBars {
+    /// The bars.
+    pub bars: BarChoice,
+    /// Half of the bottom steel in that direction, not under the minimum, mm2/m.
+    pub as_required_mm2_m: f64,
+    /// How far they reach past the support face, m.
+    pub extension_m: f64,
+    /// Their layer.
+    pub layer: Layer,
+    /// Size of the bars outside them, mm.
+    pub outside_mm: f64,
+}
+
+/// Bars of a panel beside those over its supports.
+#[derive(Debug, Clone, Copy, PartialEq, Default)]
+pub struct PanelBars {
+    /// Bottom bars along the short and the long span; none in a cantilever.
+    pub bottom: [Option<BottomBarsDesign>; 2],
+    /// Top bars at each side, in the order of [`crate::floor::Side::ALL`]; none where the whole side is continuous or free.
+    pub edges: [Option<EdgeBars>; 4],
+}
+
 /// A panel's design.
 #[derive(Debug, Clone, PartialEq)]
 pub struct PanelDesign {
@@ -253,6 +292,8 @@ pub struct PanelDesign {
     pub side_loads: [Option<SideLoad>; 4],
     /// Ultimate load of the whole panel, walls in, kN.
     pub total_ultimate_kn: f64,
+    /// What is to be made of its bottom bars and of the top bars at its discontinuous edges.
+    pub bars: PanelBars,
     /// Working of deflection; none where not designed.
     pub deflection: Option<DeflectionWorking>,
     /// The governing check, an index into `checks`.
@@ -302,6 +343,10 @@ pub struct SupportSideDesign {
     pub short_extension_m: f64,
     /// True where a point of contraflexure set the extension (3.5.3.6 e).
     pub from_contraflexure: bool,
+    /// True where the bars run on through this panel to the support on its far side (section 10 of the rules).
+    pub runs_through: bool,
+    /// Distribution bars in the other top layer.
+    pub distribution: Option<BarChoice>,
 }
 
 /// A support's design.
@@ -323,6 +368,8 @@ pub struct SupportDesign {
     pub span_ratio: Option<f64>,
     /// Layer of its bars.
     pub layer: Layer,
+    /// Size of the bars outside them, mm; 0 for T1.
+    pub outside_mm: f64,
     /// Effective depth, mm: the lesser of the two sides.
     pub d_mm: f64,
     /// Steel for bending, mm2/m; none where K exceeds K' or no moment is claimed.

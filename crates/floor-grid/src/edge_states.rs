@@ -249,8 +249,9 @@ fn joined(segments: &[Segment]) -> String {
 pub(crate) fn segment(
     (from, to): (TenthMm, TenthMm),
     neighbour: Option<PanelId>,
+    joint: bool,
     (verdict, why): (Verdict, String),
     support: Option<SupportId>,
 ) -> Segment {
-    Segment { from, to, neighbour, continuous: verdict == Verdict::Continuous, support, why }
+    Segment { from, to, neighbour, continuous: verdict == Verdict::Continuous, joint, support, why }
 }

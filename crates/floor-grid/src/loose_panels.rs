@@ -91,7 +91,7 @@ fn loose_edge(
         state,
         stated: is_stated,
         why: why.clone(),
-        segments: vec![Segment { from, to, neighbour: None, continuous, support, why }],
+        segments: vec![Segment { from, to, neighbour: None, continuous, joint: false, support, why }],
         support_width_mm: layout.support_width_mm,
     }
 }

@@ -63,6 +63,7 @@ pub(crate) fn edges_and_supports(plan: &Plan<'_>) -> Edges {
             segments[me.panel.0][me.side.index()].push(segment(
                 plan.extent(meeting, me),
                 others[index].map(|other| other.panel),
+                meeting.joint,
                 judged,
                 own.map(|(id, _)| id),
             ));

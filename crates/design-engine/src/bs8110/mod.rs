@@ -1,6 +1,7 @@
 //! The clauses of BS 8110-1:1997 used, one file per group.
 
 pub mod anchorage;
+pub mod bond;
 pub mod coefficients;
 pub mod corners;
 pub mod cover;

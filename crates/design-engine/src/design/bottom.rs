@@ -4,14 +4,14 @@ use super::fixed::Fixed;
 use super::section::{Trial, worst_ratio};
 use crate::bs8110::anchorage::{EndAnchorage, EndAnchorageWorking, EndSpace, end_anchorage};
 use crate::bs8110::curtailment::bottom_stop_share;
-use crate::bs8110::flexure::K_LIMIT;
+use crate::bs8110::flexure::{K_LIMIT, steel_area};
 use crate::bs8110::spacing::BETA_B_MIDSPAN;
 use crate::bs8110::{deflection, shear};
 use crate::check::{Check, CheckKind, Place};
-use crate::choose::{Score, best, best_pair, cost};
-use crate::criteria::{BottomBars, Criteria, Layering};
+use crate::choose::{Score, best, best_pair, cost, nominal_bars};
+use crate::criteria::{BottomBars, Criteria, EdgeStrips, Layering};
 use crate::floor::{Axis, BarChoice, EdgeState, Panel, Side, Span};
-use crate::result::DeflectionWorking;
+use crate::result::{Action, BottomBarsDesign, DeflectionWorking};
 
 /// A panel whose bottom bars are wanted.
 #[derive(Clone, Copy)]
@@ -180,6 +180,39 @@ impl BottomTask<'_> {
         let stated = self.panel.chosen_bottom[span as usize];
         let choices: &[BarChoice] = stated.as_ref().map_or(self.candidates, std::slice::from_ref);
         choices.iter().map(|bars| (*bars, self.score(span, *bars, outer_mm))).collect()
+    }
+
+    /// What is to be made of chosen bars, short and long span.
+    pub(crate) fn designs(&self, bars: BottomBarsChosen) -> [Option<BottomBarsDesign>; 2] {
+        let outer_span = self.outer_span();
+        [Span::Short, Span::Long].map(|span| {
+            let own = bars[span as usize];
+            let outer_mm = if span == outer_span { 0.0 } else { bars[outer_span as usize].bar_mm };
+            let trial = self.trial(span, own, outer_mm);
+            let sides = self.fixed.basis.axis_of(span).end_sides();
+            Some(BottomBarsDesign {
+                bars: own,
+                edge_strip: self.edge_strip(&trial),
+                alternate_stop: self.curtailed(&trial),
+                ends: sides.map(|side| {
+                    let state = self.panel.edge(side).state;
+                    let ends = matches!(state, EdgeState::Discontinuous | EdgeState::PartlyContinuous);
+                    ends.then(|| self.end(&trial, side, outer_mm))
+                }),
+            })
+        })
+    }
+
+    /// Bars of the edge strips of a two-way panel, where the criteria ask for minimum steel there and it is less (3.5.3.5). No
+    /// larger than the middle strip's: the layers keep their depths.
+    fn edge_strip(&self, trial: &Trial) -> Option<BarChoice> {
+        let two_way = self.fixed.basis.action == Action::TwoWayRestrained;
+        if self.criteria.edge_strips != EdgeStrips::MinimumSteel || !two_way || trial.stated {
+            return None;
+        }
+        let least = trial.as_minimum(self.criteria);
+        let bars = nominal_bars(self.criteria, least, trial.bars.bar_mm, trial.h_mm, trial.cover_to_bars_mm)?;
+        (steel_area(bars.bar_mm, bars.spacing_mm) < trial.as_provided() - 1e-9).then_some(bars)
     }
 
     /// Both layers, exactly.

@@ -4,12 +4,14 @@ mod balance;
 mod basis;
 mod bottom;
 mod corners;
+mod edge_bars;
 mod fixed;
 mod openings;
 mod panel;
 mod queries;
 mod regions;
 mod roots;
+mod run_through;
 mod section;
 mod side_loads;
 mod strips;
@@ -27,7 +29,7 @@ use crate::choose::candidates;
 use crate::criteria::Criteria;
 use crate::floor::{Axis, BarChoice, EdgeState, Floor, Layer, PanelId, SupportId, SupportKind};
 use crate::query::{Query, Severity};
-use crate::result::{Action, FloorDesign, PanelDesign, SupportDesign};
+use crate::result::{Action, FloorDesign, PanelBars, PanelDesign, SupportDesign};
 use balance::{SupportMoment, support_moment};
 use basis::Settled;
 use bottom::BottomBarsChosen;
@@ -74,11 +76,13 @@ pub fn design_floor(floor: &Floor, criteria: &Criteria) -> FloorDesign {
         candidates: &candidates(criteria),
     };
     let bottoms = stage.bottoms();
-    let t1 = stage.tops(Layer::T1, &bottoms, &|_| 0.0);
+    let mut t1 = stage.tops(Layer::T1, &bottoms, &|_| 0.0);
+    run_through::join(&stage, Layer::T1, &bottoms, &|_| 0.0, &mut t1);
     let t1_sizes = stage.t1_sizes(&bottoms, &t1);
     let outer =
         |id: SupportId| floor.support(id).sides().map(|side| t1_sizes[side.panel.0]).fold(0.0, f64::max);
-    let t2 = stage.tops(Layer::T2, &bottoms, &outer);
+    let mut t2 = stage.tops(Layer::T2, &bottoms, &outer);
+    run_through::join(&stage, Layer::T2, &bottoms, &outer, &mut t2);
     let supports: Vec<Option<SupportDesign>> = t1.into_iter().zip(t2).map(|(a, b)| a.or(b)).collect();
     let panels: Vec<PanelDesign> = (0..floor.panels.len())
         .into_par_iter()
@@ -205,26 +209,40 @@ impl<'a> Stage<'a> {
     /// Size of the largest T1 bar in each panel: over its supports in that direction, and its edge bars at
     /// discontinuous edges, which are not larger than the bottom bars they lap.
     fn t1_sizes(&self, bottoms: &[Option<BottomBarsChosen>], t1: &[Option<SupportDesign>]) -> Vec<f64> {
+        (0..self.view.floor.panels.len()).map(|index| self.t1_size(index, bottoms, t1)).collect()
+    }
+
+    fn t1_size(
+        &self,
+        index: usize,
+        bottoms: &[Option<BottomBarsChosen>],
+        designs: &[Option<SupportDesign>],
+    ) -> f64 {
         let floor = self.view.floor;
-        (0..floor.panels.len())
-            .map(|index| {
-                let axis = self.t1_axes[index];
-                let edge = |side: crate::floor::Side| {
-                    let edge = floor.panels[index].edge(side);
-                    let over = edge.segments.iter().filter_map(|segment| segment.support);
-                    let support =
-                        over.filter_map(|id| t1[id.0].as_ref()).map(|s| s.bars.bar_mm).fold(0.0, f64::max);
-                    let bottom = match (edge.state, bottoms[index], self.view.fixed(PanelId(index))) {
-                        (EdgeState::Discontinuous | EdgeState::PartlyContinuous, Some(bars), Some(fixed)) => {
-                            bars[fixed.basis.span_along(axis) as usize].bar_mm
-                        }
-                        _ => 0.0,
-                    };
-                    support.max(bottom)
-                };
-                axis.end_sides().map(edge).into_iter().fold(self.outer_distribution(index), f64::max)
-            })
-            .collect()
+        let axis = self.t1_axes[index];
+        let edge = |side: crate::floor::Side| {
+            let edge = floor.panels[index].edge(side);
+            let over = edge.segments.iter().filter_map(|segment| segment.support);
+            let support =
+                over.filter_map(|id| designs[id.0].as_ref()).map(|s| s.bars.bar_mm).fold(0.0, f64::max);
+            let bottom = match (edge.state, bottoms[index], self.view.fixed(PanelId(index))) {
+                (EdgeState::Discontinuous | EdgeState::PartlyContinuous, Some(bars), Some(fixed)) => {
+                    bars[fixed.basis.span_along(axis) as usize].bar_mm
+                }
+                _ => 0.0,
+            };
+            support.max(bottom)
+        };
+        // Where no other bar lies outside those over a T2 support, their distribution bars do.
+        let t2 = axis.across().end_sides().into_iter().any(|side| {
+            floor.panels[index].edge(side).segments.iter().any(|segment| segment.support.is_some())
+        });
+        let distribution =
+            if t2 { self.view.criteria.bar_sizes_mm.first().copied().unwrap_or(0.0) } else { 0.0 };
+        axis.end_sides()
+            .map(edge)
+            .into_iter()
+            .fold(self.outer_distribution(index).max(distribution), f64::max)
     }
 
     /// Size of a cantilever's distribution bars where they are the outer layer, mm; 0 elsewhere.
@@ -259,6 +277,7 @@ impl<'a> Stage<'a> {
             openings: Vec::new(),
             side_loads: side_loads::side_loads(&self.view, id, &|s| self.moment(s)),
             total_ultimate_kn: side_loads::total_ultimate_kn(&self.view, id),
+            bars: PanelBars::default(),
             deflection: None,
             governing: None,
             thickness_governed_by: None,
@@ -303,6 +322,14 @@ impl<'a> Stage<'a> {
             design.corners =
                 corners::corners(floor, criteria, panel, basis, &assembled.sections, &supports, designs);
             design.openings = openings::openings(panel, basis, &assembled.sections, designs);
+        }
+        if let (Some(fixed), false) = (self.view.fixed(id), cantilever) {
+            if let Some(task) = bottom_task(&self.view, id, self.t1_axes[id.0], self.candidates, &moments) {
+                design.bars.bottom = task.designs(bottoms[id.0].unwrap_or_else(|| task.choose()));
+            }
+            let t1_mm = self.t1_size(id.0, bottoms, designs);
+            design.bars.edges =
+                edge_bars::edge_bars(&self.view, panel, fixed, self.t1_axes[id.0], t1_mm, &design.bars);
         }
         design.sections = assembled.sections;
         design.checks = assembled.checks;

@@ -7,10 +7,11 @@ use super::roots::greatest_moment_knm_m;
 use super::section::{Trial, worst_ratio};
 use super::view::View;
 use crate::bs8110::curtailment::{contraflexure, round_up_50, top_extents};
+use crate::bs8110::flexure::minimum_steel;
 use crate::check::{Check, Place};
-use crate::choose::{Score, best, cost};
+use crate::choose::{Score, best, cost, nominal_bars};
 use crate::criteria::TopBars;
-use crate::floor::{BarChoice, Layer, Support, SupportId, SupportKind, SupportSide};
+use crate::floor::{BarChoice, Layer, PanelId, Support, SupportId, SupportKind, SupportSide};
 use crate::result::{Action, SupportDesign, SupportSideDesign};
 
 /// A new moment this much above the table's lengthens the top bars (3.5.3.6 e; decision: 10 %).
@@ -271,6 +272,11 @@ impl<'a> TopTask<'a> {
         let choices: &[BarChoice] =
             self.support.chosen.as_ref().map_or(self.candidates, std::slice::from_ref);
         let (bars, _) = best(choices.iter().map(|bars| (*bars, self.score(*bars))))?;
+        self.with_bars(bars)
+    }
+
+    /// Everything said of the support with given bars.
+    pub(crate) fn with_bars(&self, bars: BarChoice) -> Option<SupportDesign> {
         let criteria = self.view.criteria;
         let trial = self.trial(Place::Panel, bars);
         let flexure = trial.flexure(criteria);
@@ -281,7 +287,7 @@ impl<'a> TopTask<'a> {
                 .sides
                 .iter()
                 .zip(&reaches)
-                .map(|(side, reach)| self.side_design(side, reach))
+                .map(|(side, reach)| self.side_design(side, reach, bars))
                 .collect(),
             balanced: self.moment.balanced,
             moment_knm_m: self.moment.moment_knm_m,
@@ -289,6 +295,7 @@ impl<'a> TopTask<'a> {
             load_ratio: self.moment.load_ratio,
             span_ratio: self.moment.span_ratio,
             layer: self.layer,
+            outside_mm: self.outer_mm,
             d_mm: trial.d_mm,
             as_bending_mm2_m: flexure.and_then(|f| f.as_mm2_m),
             as_required_mm2_m: trial.as_required(criteria),
@@ -299,8 +306,14 @@ impl<'a> TopTask<'a> {
         })
     }
 
-    fn side_design(&self, side: &SideTask<'_>, reach: &Reach) -> SupportSideDesign {
+    fn side_design(&self, side: &SideTask<'_>, reach: &Reach, mains: BarChoice) -> SupportSideDesign {
         let fixed = side.fixed;
+        let outermost = self.layer == Layer::T2;
+        let criteria = self.view.criteria;
+        // In the outer layer they are not larger than the bars that d was taken under.
+        let greatest = if outermost { self.outer_mm } else { mains.bar_mm };
+        let cover = criteria.top_cover_mm + if outermost { 0.0 } else { mains.bar_mm };
+        let least = minimum_steel(fixed.thickness_mm, criteria.fy_n_mm2);
         let span = fixed.basis.span_along(side.at.side.span_axis());
         SupportSideDesign {
             panel: side.at.panel,
@@ -312,7 +325,14 @@ impl<'a> TopTask<'a> {
             extension_m: reach.long / 1000.0,
             short_extension_m: reach.short / 1000.0,
             from_contraflexure: reach.from_contraflexure,
+            runs_through: false,
+            distribution: nominal_bars(criteria, least, greatest, fixed.thickness_mm, cover),
         }
+    }
+
+    /// Clear span of the panel at a side, mm.
+    pub(crate) fn clear_span_mm(&self, panel: PanelId) -> Option<f64> {
+        self.sides.iter().find(|side| side.at.panel == panel).map(|side| side.clear_span_mm)
     }
 
     /// The checks of chosen bars seen from one panel, and the section's trial.

@@ -123,6 +123,7 @@ pub(crate) fn pinwheel() -> Floor {
             to: m(to),
             neighbour: neighbour.map(PanelId),
             continuous: neighbour.is_some(),
+            joint: false,
             support: neighbour.map(|_| id),
             why: String::new(),
         };

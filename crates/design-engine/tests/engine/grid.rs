@@ -353,6 +353,7 @@ impl Grid {
             to,
             neighbour,
             continuous: verdict == Verdict::Carries,
+            joint: false,
             support,
             why: String::new(),
         }];

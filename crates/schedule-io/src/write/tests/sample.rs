@@ -94,6 +94,7 @@ fn segment(line: [f64; 2], neighbour: Option<usize>, support: Option<usize>, why
         to: TenthMm::from_m(line[1]),
         neighbour: neighbour.map(PanelId),
         continuous: support.is_some(),
+        joint: false,
         support: support.map(SupportId),
         why: why.to_owned(),
     }
@@ -279,6 +280,7 @@ impl Numbers {
             openings: self.openings(panel),
             side_loads: [0, 1, 2, 3].map(|_| Some(self.side_load())),
             total_ultimate_kn: self.about(400.0),
+            bars: PanelBars::default(),
             deflection: Some(DeflectionWorking {
                 basic: self.about(26.0),
                 fs_n_mm2: self.about(280.0),
@@ -450,6 +452,7 @@ impl Numbers {
             load_ratio: both.then(|| self.about(0.93)),
             span_ratio: both.then(|| self.about(0.81)),
             layer: Layer::T1,
+            outside_mm: 0.0,
             d_mm: self.about(129.0),
             as_bending_mm2_m: self.some(372.0),
             as_required_mm2_m: self.some(373.0),
@@ -471,6 +474,8 @@ impl Numbers {
             extension_m: self.about(1.6),
             short_extension_m: self.about(0.8),
             from_contraflexure: false,
+            runs_through: false,
+            distribution: None,
         }
     }
 }
