@@ -23,7 +23,7 @@ const EXAMPLES: &str = "Examples:
 
 const SCHEDULE_EXAMPLES: &str = "Examples:
   baymat schedule floor.xlsx
-  baymat schedule floor-csv -o level-2.xlsx --json level-2.json --replace";
+  baymat schedule floor-csv -o level-2.xlsx --json level-2.json --csv level-2 --replace";
 
 const CHECK_EXAMPLES: &str = "Examples:
   baymat check floor.xlsx
@@ -94,6 +94,9 @@ pub(crate) struct ScheduleArgs {
     /// Also write the results, unrounded, for other programs
     #[arg(long, value_name = "FILE")]
     pub(crate) json: Option<PathBuf>,
+    /// Also write bending schedule, drawing notes and quantities as CSV files into this folder
+    #[arg(long, value_name = "DIR")]
+    pub(crate) csv: Option<PathBuf>,
     /// Write over outputs that exist; a floor book is never written over
     #[arg(long)]
     pub(crate) replace: bool,

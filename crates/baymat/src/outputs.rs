@@ -99,6 +99,17 @@ pub(crate) fn refuse_floor_books(outputs: &[Output]) -> Result<(), Stop> {
     if refusals.is_empty() { Ok(()) } else { Err(Stop::refused(refusals)) }
 }
 
+/// Makes the folder of the tables where it is not there.
+pub(crate) fn make_folder(folder: &Path) -> Result<(), Stop> {
+    let refused = |error: io::Error| {
+        let shown = one_line(&folder.display().to_string());
+        Stop::file_trouble(vec![Message::error(format!(
+            "{shown}: the folder of the tables cannot be made: {error}"
+        ))])
+    };
+    if folder.is_dir() { Ok(()) } else { std::fs::create_dir(folder).map_err(refused) }
+}
+
 /// Tests every output's place before any work.
 pub(crate) fn test_all(outputs: &[Output], replace: bool) -> Result<(), Stop> {
     let refusals: Vec<Message> = outputs

@@ -6,6 +6,9 @@ use design_engine::design_floor;
 use design_engine::floor::Floor;
 use design_engine::query::{Query, Severity};
 use design_engine::result::FloorDesign;
+use detailing::detail;
+use detailing::model::BarSchedule;
+use detailing::reconcile::reconcile;
 use floor_grid::lay_out;
 use schedule_io::book::{Book, PlacedQuery};
 use schedule_io::read::read_book;
@@ -23,6 +26,8 @@ pub(crate) struct Designed {
     pub(crate) floor: Floor,
     /// The design.
     pub(crate) design: FloorDesign,
+    /// Its bars.
+    pub(crate) bars: BarSchedule,
     /// Queries of reading, layout and design, the gravest first.
     pub(crate) queries: Vec<PlacedQuery>,
 }
@@ -34,6 +39,7 @@ impl Designed {
             book: &self.book,
             floor: &self.floor,
             design: &self.design,
+            bars: &self.bars,
             queries: &self.queries,
             version: env!("CARGO_PKG_VERSION"),
         }
@@ -56,7 +62,13 @@ pub(crate) fn design_book(path: &Path, show_progress: bool, talkative: bool) -> 
     let design = during(show_progress, &doing, || design_floor(&floor, &book.criteria));
     add(&mut queries, design.queries.clone(), &book);
     refuse_errors(&queries, talkative)?;
-    Ok(Designed { book, floor, design, queries })
+    let bars = during(show_progress, "detailing bars", || detail(&floor, &design, &book.criteria));
+    add(&mut queries, bars.queries.clone(), &book);
+    reconcile(&bars, &book.criteria).map_err(|error| {
+        let text = format!("the bars do not agree, so nothing is written: {error}");
+        Stop::file_trouble(vec![Message::error(text)])
+    })?;
+    Ok(Designed { book, floor, design, bars, queries })
 }
 
 /// Adds queries with their places; the gravest come first, else the order of the work is kept.

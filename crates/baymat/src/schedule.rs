@@ -1,6 +1,6 @@
 //! `baymat schedule`: design a floor book and write its schedule workbook.
 
-use schedule_io::write::{WriteError, write_results, write_workbook};
+use schedule_io::write::{TABLE_NAMES, WriteError, write_results, write_tables, write_workbook};
 
 use crate::cli::ScheduleArgs;
 use crate::console::Console;
@@ -17,11 +17,14 @@ pub(crate) fn run(args: &ScheduleArgs, console: &mut Console) -> Result<Exit, St
     if args.book.exists() {
         outputs::refuse_clashes(&args.book, &outputs)?;
         outputs::refuse_floor_books(&outputs)?;
+        if let Some(folder) = &args.csv {
+            outputs::make_folder(folder)?;
+        }
         outputs::test_all(&outputs, args.replace)?;
     }
     let show_progress = console.may_show_progress() && !args.quiet;
     let designed = design_book(&args.book, show_progress, !args.quiet)?;
-    let contents = during(show_progress, "writing", || contents(&designed, outputs.len()))
+    let contents = during(show_progress, "writing", || contents(&designed, args))
         .map_err(|error| Stop::file_trouble(vec![Message::error(format!("the outputs: {error}"))]))?;
     for (output, bytes) in outputs.iter().zip(&contents) {
         outputs::write(&output.path, bytes, args.replace)?;
@@ -32,7 +35,7 @@ pub(crate) fn run(args: &ScheduleArgs, console: &mut Console) -> Result<Exit, St
     Ok(if designed.design.ok() { Exit::AllPass } else { Exit::NotAllPass })
 }
 
-/// The outputs in the order of writing: the workbook, then the results file if one is asked for.
+/// The outputs in the order of writing: the workbook, then the results file and the tables if they are asked for.
 fn outputs_of(args: &ScheduleArgs) -> Result<Vec<Output>, Stop> {
     let path = args.output.clone().unwrap_or_else(|| outputs::default_schedule(&args.book));
     outputs::refuse_other_endings(&path)?;
@@ -40,17 +43,23 @@ fn outputs_of(args: &ScheduleArgs) -> Result<Vec<Output>, Stop> {
     if let Some(path) = args.json.clone() {
         outputs.push(Output { path, what: "results file" });
     }
+    if let Some(folder) = &args.csv {
+        outputs.extend(TABLE_NAMES.map(|(name, what)| Output { path: folder.join(name), what }));
+    }
     Ok(outputs)
 }
 
 /// Every output's bytes, made before the first is written.
-fn contents(designed: &Designed, count: usize) -> Result<Vec<Vec<u8>>, WriteError> {
+fn contents(designed: &Designed, args: &ScheduleArgs) -> Result<Vec<Vec<u8>>, WriteError> {
     let submission = designed.submission();
     let mut contents = vec![write_workbook(&submission)?];
-    if count > 1 {
+    if args.json.is_some() {
         let mut results = Vec::new();
         write_results(&submission, &mut results)?;
         contents.push(results);
+    }
+    if args.csv.is_some() {
+        contents.extend(write_tables(&submission)?);
     }
     Ok(contents)
 }

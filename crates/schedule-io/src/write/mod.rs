@@ -9,19 +9,23 @@
 //! through one sink, strictly in order. Both outputs take the same `f64`.
 
 mod beam_loads;
+mod bending_schedule;
 mod checks;
 mod column;
 mod corners;
 mod cover;
+mod drawing_notes;
 mod edges;
 mod look;
 mod numbers;
 mod openings;
 mod panels;
+mod quantities;
 mod queries;
 mod results;
 mod sink;
 mod supports;
+mod tables;
 mod text;
 mod title_block;
 mod totals;
@@ -33,10 +37,12 @@ mod tests;
 
 use design_engine::floor::Floor;
 use design_engine::result::FloorDesign;
+use detailing::model::BarSchedule;
 
 use crate::book::{Book, PlacedQuery};
 
 pub use column::ColumnDescription;
+pub use tables::TABLE_NAMES;
 pub use workbook::{SheetDescription, describe_sheets};
 
 /// Everything an output is made from.
@@ -48,6 +54,8 @@ pub struct Submission<'a> {
     pub floor: &'a Floor,
     /// Its design.
     pub design: &'a FloorDesign,
+    /// Its bars.
+    pub bars: &'a BarSchedule,
     /// All queries of reading, layout and design, with their places, in order of printing.
     pub queries: &'a [PlacedQuery],
     /// Version of the program.
@@ -90,6 +98,14 @@ pub enum WriteError {
 /// See [`WriteError`].
 pub fn write_workbook(submission: &Submission<'_>) -> Result<Vec<u8>, WriteError> {
     workbook::write(submission)
+}
+
+/// The bending schedule, the drawing notes and the quantities as CSV, in the order of [`TABLE_NAMES`].
+///
+/// # Errors
+/// See [`WriteError`].
+pub fn write_tables(submission: &Submission<'_>) -> Result<Vec<Vec<u8>>, WriteError> {
+    tables::tables(submission)
 }
 
 /// Writes the results file (`docs/results-file.md`).

@@ -4,8 +4,8 @@ use rust_xlsxwriter::{Workbook, Worksheet, XlsxError};
 
 use super::column::{Column, ColumnDescription};
 use super::{
-    Submission, WriteError, beam_loads, checks, corners, cover, edges, look, openings, panels, queries,
-    supports, title_block,
+    Submission, WriteError, beam_loads, bending_schedule, checks, corners, cover, drawing_notes, edges, look,
+    openings, panels, quantities, queries, supports, title_block,
 };
 
 /// How a sheet is kept until the file is saved.
@@ -21,7 +21,7 @@ pub(super) enum Keeping {
 type WriteSheet = fn(&Submission<'_>, &mut Worksheet) -> Result<(), WriteError>;
 
 /// The sheets in order.
-const SHEETS: [WriteSheet; 9] = [
+const SHEETS: [WriteSheet; 12] = [
     cover::write,
     panels::write,
     supports::write,
@@ -30,6 +30,9 @@ const SHEETS: [WriteSheet; 9] = [
     corners::write,
     openings::write,
     beam_loads::write,
+    bending_schedule::write,
+    drawing_notes::write,
+    quantities::write,
     queries::write,
 ];
 
@@ -84,6 +87,9 @@ pub fn describe_sheets() -> Vec<SheetDescription> {
         described(corners::NAME, "a corner of a restrained two-way panel", &corners::columns()),
         described(openings::NAME, "an opening and a layer of bars it cuts", &openings::columns()),
         described(beam_loads::NAME, "a panel's edge on its support", &beam_loads::columns()),
+        described(bending_schedule::NAME, "a bar mark", &bending_schedule::columns()),
+        described(drawing_notes::NAME, "a line for the plan", &drawing_notes::columns()),
+        described(quantities::NAME, "a quantity", &quantities::columns()),
         described(queries::NAME, "a query", &queries::columns()),
     ]
 }

@@ -3,6 +3,7 @@
 //! Keys stand in the order of that page and end in their unit; what does not apply is `null`. Parts that no
 //! design makes yet are left out.
 
+mod bars;
 mod loads;
 mod panels;
 mod supports;
@@ -35,6 +36,8 @@ fn document<'a>(submission: &'a Submission<'a>) -> Document<'a> {
         assumptions: &submission.design.assumptions,
         panels: Each(submission, panels::each),
         supports: Each(submission, supports::each),
+        bars: Each(submission, bars::each),
+        quantities: bars::quantities(submission),
         edge_segments: Each(submission, panels::each_segment),
         corners: Each(submission, loads::each_corner),
         beam_loads: Each(submission, loads::each_beam_load),
@@ -55,6 +58,8 @@ struct Document<'a> {
     assumptions: &'a [String],
     panels: Each<'a, panels::PanelResult<'a>>,
     supports: Each<'a, supports::SupportResult<'a>>,
+    bars: Each<'a, bars::BarResult<'a>>,
+    quantities: bars::QuantitiesResult,
     edge_segments: Each<'a, panels::SegmentResult<'a>>,
     corners: Each<'a, loads::CornerResult<'a>>,
     beam_loads: Each<'a, loads::BeamLoadResult<'a>>,

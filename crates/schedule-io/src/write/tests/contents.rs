@@ -138,6 +138,7 @@ fn the_cover_prints_caution_assumptions_and_the_books_name_without_its_path() {
 fn a_floor_without_rows_is_still_a_workbook() {
     let mut sample = Sample::new();
     sample.floor = Default::default();
+    sample.bars = Default::default();
     sample.design.panels.clear();
     sample.design.supports.clear();
     sample.queries.clear();

@@ -10,12 +10,14 @@ use design_engine::criteria::{Criteria, Value};
 use design_engine::floor::*;
 use design_engine::query::{Query, Severity, Subject};
 use design_engine::result::*;
+use detailing::model::BarSchedule;
 
 use crate::book::{Book, CellPlace, DefaultUsed, PlacedQuery, Places};
 use crate::write::Submission;
 
 pub(super) struct Sample {
     pub(super) book: Book,
+    pub(super) bars: BarSchedule,
     pub(super) floor: Floor,
     pub(super) design: FloorDesign,
     pub(super) queries: Vec<PlacedQuery>,
@@ -25,11 +27,13 @@ impl Sample {
     pub(super) fn new() -> Sample {
         let floor = floor();
         let design = Numbers::default().design(&floor);
-        Sample { book: book(), floor, design, queries: queries() }
+        let bars = detailing::detail(&floor, &design, &criteria(&[]));
+        Sample { book: book(), bars, floor, design, queries: queries() }
     }
 
     pub(super) fn submission(&self) -> Submission<'_> {
         Submission {
+            bars: &self.bars,
             book: &self.book,
             floor: &self.floor,
             design: &self.design,

@@ -1,0 +1,80 @@
+//! Concrete, formwork and steel of a detailed floor.
+
+use std::collections::BTreeMap;
+
+use design_engine::floor::Floor;
+
+use crate::bending::mass_kg;
+use crate::model::{BarSet, ScheduledBar, Use};
+
+/// Quantities of a floor. Plan area is measured between gridlines, openings taken off; beams and the half support outside
+/// are not counted.
+#[derive(Debug, Clone, PartialEq, Default)]
+pub struct Quantities {
+    /// Concrete of the slab, m3.
+    pub concrete_m3: f64,
+    /// Formwork of the soffit, m2.
+    pub formwork_m2: f64,
+    /// All steel, kg.
+    pub steel_kg: f64,
+    /// Steel by bar size in mm.
+    pub steel_kg_by_size: Vec<(f64, f64)>,
+    /// Of it: what laps a bar over the stock length, kg.
+    pub laps_kg: f64,
+    /// Of it: bars beside and across the corners of openings, kg.
+    pub trimmers_kg: f64,
+    /// Steel by what it is for, kg.
+    pub steel_kg_by_use: Vec<(Use, f64)>,
+}
+
+impl Quantities {
+    /// Steel per m3 of concrete, kg/m3; none where there is no concrete.
+    #[must_use]
+    pub fn steel_kg_m3(&self) -> Option<f64> {
+        (self.concrete_m3 > 0.0).then(|| self.steel_kg / self.concrete_m3)
+    }
+
+    /// Steel per m2 of formwork, kg/m2; none where there is none.
+    #[must_use]
+    pub fn steel_kg_m2(&self) -> Option<f64> {
+        (self.formwork_m2 > 0.0).then(|| self.steel_kg / self.formwork_m2)
+    }
+}
+
+#[expect(clippy::cast_precision_loss, reason = "bars of a floor are far below 2^53")]
+fn number(count: usize) -> f64 {
+    count as f64
+}
+
+/// Quantities from the marks, in order of marks; laps and trimmers from the sets.
+pub(crate) fn quantities(floor: &Floor, bars: &[ScheduledBar], sets: &[BarSet]) -> Quantities {
+    let net = |area: f64, openings: f64| (area - openings).max(0.0);
+    let mut quantities = Quantities::default();
+    for panel in &floor.panels {
+        let openings: f64 = panel.openings.iter().map(|o| o.widths_m[0] * o.widths_m[1]).sum();
+        let area = net(panel.area_m2(), openings);
+        quantities.formwork_m2 += area;
+        quantities.concrete_m3 += area * panel.thickness_mm / 1000.0;
+    }
+    let mut by_size: BTreeMap<u64, (f64, f64)> = BTreeMap::new();
+    for bar in bars {
+        quantities.steel_kg += bar.mass_kg;
+        let entry = by_size.entry(bar.bar.size_mm.to_bits()).or_insert((bar.bar.size_mm, 0.0));
+        entry.1 += bar.mass_kg;
+    }
+    quantities.steel_kg_by_size = by_size.into_values().collect();
+    let mut by_use: BTreeMap<Use, f64> = BTreeMap::new();
+    for set in sets {
+        for run in &set.runs {
+            let bar = &bars[run.bar];
+            let mass = number(run.count) * mass_kg(bar.bar.size_mm, bar.length_mm);
+            *by_use.entry(set.for_what).or_insert(0.0) += mass;
+            quantities.laps_kg += number(run.count) * mass_kg(bar.bar.size_mm, run.lap_mm);
+            if matches!(set.for_what, Use::Trimmer | Use::Diagonal) {
+                quantities.trimmers_kg += mass;
+            }
+        }
+    }
+    quantities.steel_kg_by_use = by_use.into_iter().collect();
+    quantities
+}
