@@ -97,6 +97,9 @@ pub(crate) struct ScheduleArgs {
     /// Also write bending schedule, drawing notes and quantities as CSV files into this folder
     #[arg(long, value_name = "DIR")]
     pub(crate) csv: Option<PathBuf>,
+    /// The schedule workbook of the issue before: its bar marks are kept, and changes are listed
+    #[arg(long, value_name = "OLD.xlsx")]
+    pub(crate) previous: Option<PathBuf>,
     /// Write over outputs that exist; a floor book is never written over
     #[arg(long)]
     pub(crate) replace: bool,

@@ -7,8 +7,10 @@ use design_engine::floor::Floor;
 use design_engine::query::{Query, Severity};
 use design_engine::result::FloorDesign;
 use detailing::detail;
+use detailing::inputs::inputs;
 use detailing::model::BarSchedule;
-use detailing::reconcile::reconcile;
+use detailing::reconcile::{ReconcileError, reconcile};
+use detailing::reissue::{Change, Register, register, reissue};
 use floor_grid::lay_out;
 use schedule_io::book::{Book, PlacedQuery};
 use schedule_io::read::read_book;
@@ -28,6 +30,10 @@ pub(crate) struct Designed {
     pub(crate) design: FloorDesign,
     /// Its bars.
     pub(crate) bars: BarSchedule,
+    /// Every mark ever used.
+    pub(crate) register: Register,
+    /// What differs from the issue before, if one was given.
+    pub(crate) changes: Option<Vec<Change>>,
     /// Queries of reading, layout and design, the gravest first.
     pub(crate) queries: Vec<PlacedQuery>,
 }
@@ -40,9 +46,22 @@ impl Designed {
             floor: &self.floor,
             design: &self.design,
             bars: &self.bars,
+            register: &self.register,
+            changes: self.changes.as_deref(),
             queries: &self.queries,
             version: env!("CARGO_PKG_VERSION"),
         }
+    }
+
+    /// Keeps the marks of the issue before and notes what changed.
+    pub(crate) fn compare_with(&mut self, previous: &Register) -> Result<(), Stop> {
+        let inputs = std::mem::take(&mut self.register.inputs);
+        let revision = &self.book.criteria.revision;
+        let (register, changes) = reissue(&self.floor, &mut self.bars, previous, inputs, revision)
+            .map_err(|error| Stop::refused(vec![Message::error(format!("{}: {error}", self.book.name))]))?;
+        reconcile(&self.bars, &self.book.criteria).map_err(|error| bars_do_not_agree(&error))?;
+        (self.register, self.changes) = (register, Some(changes));
+        Ok(())
     }
 }
 
@@ -64,11 +83,15 @@ pub(crate) fn design_book(path: &Path, show_progress: bool, talkative: bool) -> 
     refuse_errors(&queries, talkative)?;
     let bars = during(show_progress, "detailing bars", || detail(&floor, &design, &book.criteria));
     add(&mut queries, bars.queries.clone(), &book);
-    reconcile(&bars, &book.criteria).map_err(|error| {
-        let text = format!("the bars do not agree, so nothing is written: {error}");
-        Stop::file_trouble(vec![Message::error(text)])
-    })?;
-    Ok(Designed { book, floor, design, bars, queries })
+    reconcile(&bars, &book.criteria).map_err(|error| bars_do_not_agree(&error))?;
+    let inputs = inputs(&floor, &design, &book.criteria);
+    let register = register(&floor, &bars, inputs, &book.criteria.revision);
+    Ok(Designed { book, floor, design, bars, register, changes: None, queries })
+}
+
+fn bars_do_not_agree(error: &ReconcileError) -> Stop {
+    let text = format!("the bars do not agree, so nothing is written: {error}");
+    Stop::file_trouble(vec![Message::error(text)])
 }
 
 /// Adds queries with their places; the gravest come first, else the order of the work is kept.

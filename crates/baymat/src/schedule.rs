@@ -2,10 +2,15 @@
 
 use schedule_io::write::{TABLE_NAMES, WriteError, write_results, write_tables, write_workbook};
 
+use std::path::Path;
+
+use detailing::reissue::Register;
+use schedule_io::read::{PreviousError, read_previous};
+
 use crate::cli::ScheduleArgs;
 use crate::console::Console;
 use crate::exit::{Exit, Stop};
-use crate::message::Message;
+use crate::message::{Message, one_line};
 use crate::outputs::{self, Output};
 use crate::pipeline::{Designed, design_book};
 use crate::progress::during;
@@ -23,7 +28,11 @@ pub(crate) fn run(args: &ScheduleArgs, console: &mut Console) -> Result<Exit, St
         outputs::test_all(&outputs, args.replace)?;
     }
     let show_progress = console.may_show_progress() && !args.quiet;
-    let designed = design_book(&args.book, show_progress, !args.quiet)?;
+    let previous = args.previous.as_deref().map(previous_issue).transpose()?;
+    let mut designed = design_book(&args.book, show_progress, !args.quiet)?;
+    if let Some(previous) = previous {
+        designed.compare_with(&previous)?;
+    }
     let contents = during(show_progress, "writing", || contents(&designed, args))
         .map_err(|error| Stop::file_trouble(vec![Message::error(format!("the outputs: {error}"))]))?;
     for (output, bytes) in outputs.iter().zip(&contents) {
@@ -33,6 +42,20 @@ pub(crate) fn run(args: &ScheduleArgs, console: &mut Console) -> Result<Exit, St
         console.print(&summary::text(&designed, &outputs, console.paint()));
     }
     Ok(if designed.design.ok() { Exit::AllPass } else { Exit::NotAllPass })
+}
+
+/// The register of the issue before.
+fn previous_issue(path: &Path) -> Result<Register, Stop> {
+    let shown = one_line(&path.display().to_string());
+    read_previous(path).map_err(|error| match error {
+        PreviousError::CannotOpen(why) => Stop::file_trouble(vec![Message::error(format!(
+            "{shown}: the previous issue cannot be read: {why}"
+        ))]),
+        PreviousError::NotOurs(why) => {
+            let remedy = "give the schedule workbook of the issue before to --previous";
+            Stop::refused(vec![Message::error(format!("{shown}: no previous issue: {why}; {remedy}"))])
+        }
+    })
 }
 
 /// The outputs in the order of writing: the workbook, then the results file and the tables if they are asked for.

@@ -36,6 +36,40 @@ pub fn places(schedule: &BarSchedule) -> Vec<Vec<BarPlace>> {
     places
 }
 
+/// `L01 18, L02 17`: places with their numbers; after `most` of them `and so many more`.
+#[must_use]
+pub fn place_words(floor: &Floor, places: &[BarPlace], most: usize) -> String {
+    let name = |place: &BarPlace| match (place.panel, place.support) {
+        (Some(panel), _) => floor.panel(panel).mark.clone(),
+        (None, Some(support)) => support_name(floor, floor.support(support)),
+        (None, None) => String::new(),
+    };
+    let mut words: Vec<String> =
+        places.iter().take(most).map(|place| format!("{} {}", name(place), place.count)).collect();
+    if places.len() > most {
+        words.push(format!("and {} more", places.len() - most));
+    }
+    words.join(", ")
+}
+
+/// The panels that the bars of each mark depend on, in order.
+#[must_use]
+pub fn panels_of_bars(floor: &Floor, schedule: &BarSchedule) -> Vec<Vec<PanelId>> {
+    let mut panels: Vec<Vec<PanelId>> = vec![Vec::new(); schedule.bars.len()];
+    for set in &schedule.sets {
+        let mut of_set = vec![set.panel];
+        of_set.extend(set.supports.iter().flat_map(|id| floor.support(*id).sides().map(|side| side.panel)));
+        for run in &set.runs {
+            panels[run.bar].extend(&of_set);
+        }
+    }
+    for of_bar in &mut panels {
+        of_bar.sort_unstable();
+        of_bar.dedup();
+    }
+    panels
+}
+
 /// The name of a support in notes: its own, or its only panel's edge.
 #[must_use]
 pub fn support_name(floor: &Floor, support: &Support) -> String {

@@ -10,6 +10,7 @@ mod numbers;
 mod on_panels;
 mod open;
 mod panels;
+pub(crate) mod previous;
 mod recognise;
 mod report;
 mod rows;
@@ -18,6 +19,7 @@ mod units;
 mod unpacked;
 mod workbook;
 
+pub use previous::{PreviousError, read_previous};
 pub use recognise::is_floor_book;
 
 use std::path::{Path, PathBuf};

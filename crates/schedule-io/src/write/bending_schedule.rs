@@ -1,20 +1,22 @@
 //! Sheet `Bending schedule`: the form of BS 8666:2005, a row per mark, in order of fixing, with totals by page and by size.
 
 use detailing::model::{ScheduledBar, Use};
-use detailing::notes::{BarPlace, places, support_name};
+use detailing::notes::{BarPlace, place_words, places};
 use rust_xlsxwriter::Worksheet;
 
 use super::column::{Cell, Column, Head};
 use super::look::Tone;
 use super::sink::RowSink;
-use super::{Submission, WriteError, words};
+use super::{Submission, WriteError};
 
 pub(super) const NAME: &str = "Bending schedule";
 const FROZEN_COLUMNS: u16 = 2;
 /// Marks on a printed page, between its headings and its total.
 const BARS_ON_A_PAGE: usize = 34;
+/// Letters of `Where` in one line.
+const PLACES_IN_A_LINE: usize = 60;
 /// At which the columns fill the width of an A3 page.
-const PRINT_SCALE_PCT: u16 = 80;
+const PRINT_SCALE_PCT: u16 = 96;
 /// Places named in a row before `and so many more`.
 const MOST_PLACES: usize = 8;
 
@@ -46,25 +48,10 @@ pub(super) fn rows<'a>(submission: &'a Submission<'a>) -> Vec<ScheduleRow<'a>> {
         bar: Some(bar),
         member: member.clone(),
         letter: criteria.bar_type_letter(),
-        place: place_words(submission, places),
+        place: place_words(submission.floor, places, MOST_PLACES),
         mass_kg: Some(bar.mass_kg),
     };
     submission.bars.bars.iter().zip(&places).map(row).collect()
-}
-
-fn place_words(submission: &Submission<'_>, places: &[BarPlace]) -> String {
-    let floor = submission.floor;
-    let name = |place: &BarPlace| match (place.panel, place.support) {
-        (Some(panel), _) => words::mark(floor, panel).to_owned(),
-        (None, Some(support)) => support_name(floor, floor.support(support)),
-        (None, None) => String::new(),
-    };
-    let mut named: Vec<String> =
-        places.iter().take(MOST_PLACES).map(|place| format!("{} {}", name(place), place.count)).collect();
-    if places.len() > MOST_PLACES {
-        named.push(format!("and {} more", places.len() - MOST_PLACES));
-    }
-    named.join(", ")
 }
 
 pub(super) fn write(submission: &Submission<'_>, worksheet: &mut Worksheet) -> Result<(), WriteError> {
@@ -83,7 +70,8 @@ pub(super) fn write(submission: &Submission<'_>, worksheet: &mut Worksheet) -> R
             on_page += 1;
         }
         put(&mut sink, &columns, Tone::Plain, row)?;
-        (on_page, page_mass) = (on_page + 1, page_mass + bar.mass_kg);
+        on_page += 1 + row.place.chars().count() / PLACES_IN_A_LINE;
+        page_mass += bar.mass_kg;
         if on_page >= BARS_ON_A_PAGE {
             let next = put(
                 &mut sink,

@@ -10,6 +10,7 @@ use super::sink::RowSink;
 use super::title_block::{CAUTION, PROGRAM};
 use super::totals::{Totals, queries_by_severity};
 use super::{Submission, WriteError, text, words};
+use crate::read::previous::{FORMAT, FORMAT_LABEL};
 
 pub(super) const NAME: &str = "Cover";
 /// Characters of a line of running text, which flows over the empty cells right of it.
@@ -185,6 +186,7 @@ impl<'a> Cover<'_, 'a> {
             .map(|setting| CoverRow::of(setting.item, value(criteria.value(setting))))
             .collect();
         title_block.push(CoverRow::of("Floor book", self.submission.book.name.as_str()));
+        title_block.push(CoverRow::of(FORMAT_LABEL, FORMAT));
         title_block.push(CoverRow::of("Program", format!("{PROGRAM} {}", self.submission.version)));
         for (row, total) in title_block.into_iter().zip(totals(&self.submission)) {
             self.row(Tone::Plain, &row.beside(total))?;
@@ -256,7 +258,8 @@ fn totals(submission: &Submission<'_>) -> Vec<(Cell<'static>, Cell<'static>)> {
         ("Panels that fail".into(), count(totals.failing.len())),
         ("Panels not designed".into(), count(totals.not_designed.len())),
         ("Plan area (m²)".into(), totals.area_m2.into()),
-        ("Concrete (m³)".into(), totals.concrete_m3.into()),
+        ("Concrete (m³)".into(), submission.bars.quantities.concrete_m3.into()),
+        ("Steel (kg)".into(), submission.bars.quantities.steel_kg.into()),
     ];
     for (severity, number) in queries_by_severity(submission) {
         rows.push((format!("Queries: {}", severity.word()).into(), count(number)));

@@ -62,8 +62,17 @@ fn lines(submission: &Submission<'_>, about: &str, set: &BarSet, rows: &mut Vec<
             about: about.to_owned(),
             what: set.for_what.word().to_owned(),
             callout: callout.text,
-            placing: if index == 0 { text.clone() } else { "with the line above".to_owned() },
+            placing: if index == 0 { text.clone() } else { with_the_line_above(set).to_owned() },
         });
+    }
+}
+
+/// What a further mark of a set is.
+fn with_the_line_above(set: &BarSet) -> &'static str {
+    match set.for_what {
+        Use::Edge => "with the line above: longer next to the corners, or cut at openings",
+        Use::Bottom => "with the line above: alternate bars that stop short, or bars cut at openings",
+        _ => "with the line above",
     }
 }
 

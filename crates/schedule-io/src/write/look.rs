@@ -44,6 +44,7 @@ pub(super) fn cell(kind: Kind, tone: Tone) -> Format {
         Tone::Plain => of_kind(format, kind),
         Tone::Marked => of_kind(format, kind).set_background_color(ACCENT).set_bold(),
         Tone::Section => {
+            let format = if matches!(kind, Kind::Number(_)) { of_kind(format, kind) } else { format };
             format.set_bold().set_border_bottom(FormatBorder::Thin).set_border_bottom_color(LINE)
         }
         Tone::Title => format.set_bold().set_font_size(16).set_font_color(DARK),

@@ -10,6 +10,7 @@
 
 mod beam_loads;
 mod bending_schedule;
+mod changes;
 mod checks;
 mod column;
 mod corners;
@@ -22,6 +23,7 @@ mod openings;
 mod panels;
 mod quantities;
 mod queries;
+mod register;
 mod results;
 mod sink;
 mod supports;
@@ -38,6 +40,7 @@ mod tests;
 use design_engine::floor::Floor;
 use design_engine::result::FloorDesign;
 use detailing::model::BarSchedule;
+use detailing::reissue::{Change, Register};
 
 use crate::book::{Book, PlacedQuery};
 
@@ -56,6 +59,10 @@ pub struct Submission<'a> {
     pub design: &'a FloorDesign,
     /// Its bars.
     pub bars: &'a BarSchedule,
+    /// Every mark ever used, for the next issue.
+    pub register: &'a Register,
+    /// What differs from the previous issue; none on a first one.
+    pub changes: Option<&'a [Change]>,
     /// All queries of reading, layout and design, with their places, in order of printing.
     pub queries: &'a [PlacedQuery],
     /// Version of the program.

@@ -14,8 +14,6 @@ pub(super) struct Totals<'a> {
     pub(super) not_designed: Vec<&'a str>,
     /// Sum of the panels' areas between support centre lines.
     pub(super) area_m2: f64,
-    /// That area times each panel's thickness.
-    pub(super) concrete_m3: f64,
     pub(super) warnings: usize,
 }
 
@@ -27,7 +25,6 @@ impl<'a> Totals<'a> {
             failing: Vec::new(),
             not_designed: Vec::new(),
             area_m2: floor.panels.iter().map(|panel| panel.area_m2()).sum(),
-            concrete_m3: floor.panels.iter().map(|panel| panel.area_m2() * panel.thickness_mm / 1000.0).sum(),
             warnings: submission.queries.iter().filter(|q| q.query.severity == Severity::Warning).count(),
         };
         for panel in &design.panels {

@@ -4,8 +4,8 @@ use rust_xlsxwriter::{Workbook, Worksheet, XlsxError};
 
 use super::column::{Column, ColumnDescription};
 use super::{
-    Submission, WriteError, beam_loads, bending_schedule, checks, corners, cover, drawing_notes, edges, look,
-    openings, panels, quantities, queries, supports, title_block,
+    Submission, WriteError, beam_loads, bending_schedule, changes, checks, corners, cover, drawing_notes,
+    edges, look, openings, panels, quantities, queries, register, supports, title_block,
 };
 
 /// How a sheet is kept until the file is saved.
@@ -21,7 +21,7 @@ pub(super) enum Keeping {
 type WriteSheet = fn(&Submission<'_>, &mut Worksheet) -> Result<(), WriteError>;
 
 /// The sheets in order.
-const SHEETS: [WriteSheet; 12] = [
+const SHEETS: [WriteSheet; 14] = [
     cover::write,
     panels::write,
     supports::write,
@@ -33,7 +33,9 @@ const SHEETS: [WriteSheet; 12] = [
     bending_schedule::write,
     drawing_notes::write,
     quantities::write,
+    changes::write,
     queries::write,
+    register::write,
 ];
 
 /// Writes the schedule workbook.
@@ -90,6 +92,8 @@ pub fn describe_sheets() -> Vec<SheetDescription> {
         described(bending_schedule::NAME, "a bar mark", &bending_schedule::columns()),
         described(drawing_notes::NAME, "a line for the plan", &drawing_notes::columns()),
         described(quantities::NAME, "a quantity", &quantities::columns()),
+        described(changes::NAME, "a change against the previous issue", &changes::columns()),
         described(queries::NAME, "a query", &queries::columns()),
+        described(register::NAME, "an issue, a mark, or a panel's inputs", &register::columns()),
     ]
 }

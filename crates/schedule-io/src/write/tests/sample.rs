@@ -11,6 +11,7 @@ use design_engine::floor::*;
 use design_engine::query::{Query, Severity, Subject};
 use design_engine::result::*;
 use detailing::model::BarSchedule;
+use detailing::reissue::Register;
 
 use crate::book::{Book, CellPlace, DefaultUsed, PlacedQuery, Places};
 use crate::write::Submission;
@@ -18,6 +19,7 @@ use crate::write::Submission;
 pub(super) struct Sample {
     pub(super) book: Book,
     pub(super) bars: BarSchedule,
+    pub(super) register: Register,
     pub(super) floor: Floor,
     pub(super) design: FloorDesign,
     pub(super) queries: Vec<PlacedQuery>,
@@ -28,12 +30,15 @@ impl Sample {
         let floor = floor();
         let design = Numbers::default().design(&floor);
         let bars = detailing::detail(&floor, &design, &criteria(&[]));
-        Sample { book: book(), bars, floor, design, queries: queries() }
+        let register = detailing::reissue::register(&floor, &bars, Vec::new(), "B");
+        Sample { book: book(), register, bars, floor, design, queries: queries() }
     }
 
     pub(super) fn submission(&self) -> Submission<'_> {
         Submission {
             bars: &self.bars,
+            register: &self.register,
+            changes: None,
             book: &self.book,
             floor: &self.floor,
             design: &self.design,
