@@ -76,7 +76,9 @@ fn set(
         .iter()
         .enumerate()
         .map(|(index, &at)| {
-            let short = design.alternate_stop && index % 2 == 1 && !in_corner(context, axis, at);
+            // The first and the last bar go the whole way.
+            let inner = index % 2 == 1 && index + 1 < places.len();
+            let short = design.alternate_stop && inner && !in_corner(context, axis, at);
             Placed { across: at, ends: if short { stops } else { full } }
         })
         .collect();

@@ -12,7 +12,7 @@ use crate::drafts::{Common, SetDraft, runs};
 use crate::edges::height_mm;
 use crate::model::Use;
 use crate::placed::{End, Placed, Reach};
-use crate::zones::{FROM_FACE_MM, from_to};
+use crate::zones::FROM_FACE_MM;
 
 /// Sets of torsion bars in a panel: at each corner, along each axis, in each face.
 pub(crate) fn sets(context: &PanelContext<'_>) -> Vec<SetDraft> {
@@ -61,21 +61,25 @@ fn bars_for(context: &PanelContext<'_>, axis: Axis, area: f64) -> Option<BarChoi
     nominal_bars(criteria, area, size, context.slab.panel.thickness_mm, criteria.bottom_cover_mm)
 }
 
-/// Places across: from the face of the side beside to the end of the extent.
+/// Places across: as many as the extent holds at the spacing, from the face of the side beside on, between the bars that are
+/// there: half a spacing on from where they begin.
 fn places(context: &PanelContext<'_>, corner: &CornerDesign, beside: Side, spacing_mm: f64) -> Vec<f64> {
     let line = context.slab.side(beside);
     let end = line.line - line.outward * corner.extent_m * 1000.0;
-    // Between the bars that are there: half a spacing on from where they begin.
-    let start = line.inward(FROM_FACE_MM + spacing_mm / 2.0);
-    if (end - start) * line.outward >= 0.0 {
-        return vec![start];
+    let width = (line.face - end) * line.outward;
+    let mut places = Vec::new();
+    let mut from_face = FROM_FACE_MM + spacing_mm / 2.0;
+    while spacing_mm * number(places.len()) < width - 1e-6 {
+        places.push(line.inward(from_face));
+        from_face += spacing_mm;
     }
-    let mut places = from_to([start.min(end), start.max(end)], spacing_mm);
-    if start > end {
-        places = from_to([-start, -end], spacing_mm).into_iter().map(|at| -at).collect();
-        places.reverse();
-    }
+    places.sort_by(f64::total_cmp);
     places
+}
+
+#[expect(clippy::cast_precision_loss, reason = "bars of a corner are far below 2^53")]
+fn number(bars: usize) -> f64 {
+    bars as f64
 }
 
 /// At a discontinuous edge: U-bars, one leg in each face. None where the slab is too thin for them.

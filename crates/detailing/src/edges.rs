@@ -4,6 +4,7 @@
 use design_engine::bars::bar_size;
 use design_engine::bs8110::anchorage::EndAnchorage;
 use design_engine::bs8110::bond::anchorage_mm;
+use design_engine::bs8110::flexure::steel_area;
 use design_engine::choose::nominal_bars;
 use design_engine::floor::{BarChoice, EdgeState, Side};
 use design_engine::query::{Query, Severity};
@@ -70,13 +71,18 @@ pub(crate) fn bars_and_end(
         match smaller
             .and_then(|size| nominal_bars(criteria, design.as_required_mm2_m, *size, thickness, cover))
         {
-            Some(next) if next.bar_mm < bars.bar_mm - 1e-9 => bars = next,
+            Some(next) if next.bar_mm < bars.bar_mm - 1e-9 && enough(next, design) => bars = next,
             _ => break,
         }
     }
     let bars = design.bars;
     let leg = anchorage_mm(bars.bar_mm, criteria) - straight_past_face(context, side);
     Some((bars, End::Leg(up_to_5(leg.max(bar_size(bars.bar_mm).projection_mm)))))
+}
+
+/// Whether bars hold the steel that the edge asks for.
+fn enough(bars: BarChoice, design: &EdgeBars) -> bool {
+    steel_area(bars.bar_mm, bars.spacing_mm) >= design.as_required_mm2_m - 1e-6
 }
 
 /// Height of a U-bar between the faces: thickness less covers, deduction and the bars outside it at both faces.

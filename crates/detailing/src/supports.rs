@@ -80,7 +80,7 @@ fn set(context: &Context<'_>, chain: &[SupportId]) -> Option<SetDraft> {
     } else {
         [[low_long, high_long], [low_short, high_short]]
     };
-    let places = between_faces(zone(context, support), design.bars.spacing_mm);
+    let places = between_faces(zone(context, chain), design.bars.spacing_mm);
     let placed: Vec<Placed> = places
         .iter()
         .enumerate()
@@ -154,10 +154,11 @@ fn end(context: &Context<'_>, id: SupportId, greater: bool) -> Option<(Reach, Re
 
 /// The stretch of a support that its bars are spread over: from face to face of the supports at its ends where all its
 /// panels have a corner there, else its own length.
-fn zone(context: &Context<'_>, support: &Support) -> [f64; 2] {
-    let zones: Vec<[f64; 2]> = support
-        .sides()
-        .filter_map(|at| {
+fn zone(context: &Context<'_>, chain: &[SupportId]) -> [f64; 2] {
+    let sides = chain.iter().map(|id| context.floor.support(*id));
+    let zones: Vec<[f64; 2]> = sides
+        .flat_map(|support| support.sides().map(move |at| (support, at)))
+        .filter_map(|(support, at)| {
             let panel = context.panel(at.panel)?;
             let stretch = if panel.slab.panel.is_loose() {
                 panel.slab.extent(support.axis.across())

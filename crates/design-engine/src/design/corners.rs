@@ -2,11 +2,11 @@
 
 use super::panel::SupportBars;
 use crate::bs8110::corners::{CornerState, torsion_extent_m, torsion_steel};
-use crate::bs8110::flexure::minimum_steel;
+use crate::bs8110::flexure::{minimum_steel, steel_area};
 use crate::check::Place;
 use crate::criteria::Criteria;
 use crate::floor::{Axis, Corners, Floor, Panel, Segment, Side, Spanning};
-use crate::result::{Action, Basis, CornerDesign, Section, SupportDesign};
+use crate::result::{Action, Basis, CornerDesign, PanelBars, Section, SupportDesign};
 
 /// Corners in a fixed order, by their north or south and east or west sides.
 const CORNERS: [[Side; 2]; 4] = [
@@ -17,12 +17,14 @@ const CORNERS: [[Side; 2]; 4] = [
 ];
 
 /// The corners of a restrained two-way panel held down; of any other panel none.
+#[expect(clippy::too_many_arguments, reason = "everything around a panel meets at its corners")]
 pub(crate) fn corners(
     floor: &Floor,
     criteria: &Criteria,
     panel: &Panel,
     basis: &Basis,
     sections: &[Section],
+    bars: &PanelBars,
     supports: &[SupportBars<'_>],
     designs: &[Option<SupportDesign>],
 ) -> Vec<CornerDesign> {
@@ -36,7 +38,14 @@ pub(crate) fn corners(
     };
     let bending = [Axis::X, Axis::Y].map(|axis| bottom(axis).and_then(|s| s.as_bending_mm2_m).unwrap_or(0.0));
     let greatest = bending[0].max(bending[1]);
-    let provided = |axis: Axis| bottom(axis).map_or(0.0, |s| s.as_provided_mm2_m);
+    // Corners lie in the edge strips, or reach into them.
+    let provided = |axis: Axis| {
+        let strip = bars.bottom[basis.span_along(axis) as usize].and_then(|bars| bars.edge_strip);
+        strip.map_or_else(
+            || bottom(axis).map_or(0.0, |s| s.as_provided_mm2_m),
+            |strip| steel_area(strip.bar_mm, strip.spacing_mm),
+        )
+    };
     let extent_m = torsion_extent_m(basis.lx_m);
     CORNERS
         .into_iter()
@@ -48,7 +57,7 @@ pub(crate) fn corners(
             // Top bars at right angles to each of the two edges: of the support, or the edge's own.
             let top = |axis: Axis| {
                 let i = usize::from(sides[0].span_axis() != axis);
-                let over = ends[i].and_then(|segment| segment.support).filter(|_| carried[i]);
+                let over = ends[i].and_then(|segment| segment.support);
                 match over.and_then(|id| supports.iter().find(|s| s.id == id)) {
                     Some(support) => over_support(panel, support, designs, extent_m),
                     None => (provided(axis) / 2.0).max(minimum_steel(panel.thickness_mm, criteria.fy_n_mm2)),
@@ -79,7 +88,7 @@ fn carries(floor: &Floor, segment: &Segment) -> bool {
     segment.continuous && !segment.neighbour.is_some_and(cantilever)
 }
 
-/// Steel of a support's bars that reaches the extent: all of them, or the half that goes furthest.
+/// Steel of a support's bars that reaches the extent: all of them, the half that goes furthest, or none.
 fn over_support(
     panel: &Panel,
     support: &SupportBars<'_>,
@@ -89,6 +98,12 @@ fn over_support(
     let Some(design) = &designs[support.id.0] else { return 0.0 };
     let half_width = panel.edge(support.side).support_width_mm / 2000.0;
     let short = design.sides.iter().map(|side| side.short_extension_m).fold(f64::INFINITY, f64::min);
-    let all = short + half_width >= extent_m;
-    design.as_provided_mm2_m * if all { 1.0 } else { 0.5 }
+    let long = design.sides.iter().map(|side| side.extension_m).fold(f64::INFINITY, f64::min);
+    let reaches = |extension_m: f64| extension_m + half_width >= extent_m - 1e-9;
+    let share = match (reaches(short), reaches(long)) {
+        (true, _) => 1.0,
+        (false, true) => 0.5,
+        (false, false) => 0.0,
+    };
+    design.as_provided_mm2_m * share
 }

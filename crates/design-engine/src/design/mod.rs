@@ -317,12 +317,6 @@ impl<'a> Stage<'a> {
         if assembled.checks.iter().any(|check| check.kind == CheckKind::Deflection && !check.ok) {
             design.least_thickness_mm = in_place.least_that_passes();
         }
-        if let Some(basis) = &design.basis {
-            let View { floor, criteria, .. } = self.view;
-            design.corners =
-                corners::corners(floor, criteria, panel, basis, &assembled.sections, &supports, designs);
-            design.openings = openings::openings(panel, basis, &assembled.sections, designs);
-        }
         if let (Some(fixed), false) = (self.view.fixed(id), cantilever) {
             if let Some(task) = bottom_task(&self.view, id, self.t1_axes[id.0], self.candidates, &moments) {
                 design.bars.bottom = task.designs(bottoms[id.0].unwrap_or_else(|| task.choose()));
@@ -330,6 +324,12 @@ impl<'a> Stage<'a> {
             let t1_mm = self.t1_size(id.0, bottoms, designs);
             design.bars.edges =
                 edge_bars::edge_bars(&self.view, panel, fixed, self.t1_axes[id.0], t1_mm, &design.bars);
+        }
+        if let Some(basis) = &design.basis {
+            let View { floor, criteria, .. } = self.view;
+            design.corners =
+                corners::corners(floor, criteria, panel, basis, &assembled.sections, &design.bars, &supports, designs);
+            design.openings = openings::openings(panel, basis, &assembled.sections, designs);
         }
         design.sections = assembled.sections;
         design.checks = assembled.checks;
