@@ -48,7 +48,7 @@ fn lying(schedule: &BarSchedule) -> Vec<Lying> {
                     } else {
                         along[1]
                     };
-                    let inner = if outer == along[0] { outer + c } else { outer - c };
+                    let inner = if (outer - along[0]).abs() < 1e-6 { outer + c } else { outer - c };
                     let along = [outer.min(inner), outer.max(inner)];
                     bars.push(Lying { axis: set.axis, top: BOTTOM, across: run.place(index), along, area });
                 }
@@ -565,7 +565,7 @@ fn one_bar_missing_is_found() {
     for for_what in [Use::Bottom, Use::OverSupport, Use::Edge] {
         let mut planted = whole.clone();
         let set = planted.sets.iter_mut().find(|set| set.for_what == for_what).unwrap();
-        let run = set.runs.iter().max_by_key(|run| run.count).unwrap().clone();
+        let run = *set.runs.iter().max_by_key(|run| run.count).unwrap();
         // Cut in two with the middle bar left out.
         let middle = run.count / 2;
         let (mut before, mut after) = (run, run);

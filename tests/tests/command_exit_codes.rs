@@ -20,7 +20,7 @@ fn a_failing_check_is_1_and_the_schedule_is_written() {
     failing_book(dir.path());
     run_in(dir.path(), &["schedule", "failing"])
         .ends_with(1)
-        .prints(&["4 panels: 3 pass, 1 fail, 0 not designed", "2 failing checks:"])
+        .prints(&["4 panels: 3 pass, 1 fail, 0 not designed", "3 failing checks:"])
         .says_nothing();
     run_in(dir.path(), &["check", "failing"]).ends_with(1).prints(&["3 pass, 1 fail", "panel S4"]);
     assert_eq!(names_in(dir.path()), ["failing", "failing-schedule.xlsx"]);

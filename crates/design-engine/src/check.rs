@@ -31,11 +31,13 @@ pub enum CheckKind {
     ThicknessForFire,
     /// A cantilever lifting the far support of its back-span.
     Uplift,
+    /// Covers and layers of bars within the thickness.
+    LayersFit,
 }
 
 impl CheckKind {
     /// Every kind, in the order of printing.
-    pub const ALL: [CheckKind; 13] = [
+    pub const ALL: [CheckKind; 14] = [
         CheckKind::Bending,
         CheckKind::Shear,
         CheckKind::Deflection,
@@ -49,6 +51,7 @@ impl CheckKind {
         CheckKind::CoverForBarAndAggregate,
         CheckKind::ThicknessForFire,
         CheckKind::Uplift,
+        CheckKind::LayersFit,
     ];
 
     /// Its name in every output.
@@ -68,6 +71,7 @@ impl CheckKind {
             CheckKind::CoverForBarAndAggregate => "cover for bar and aggregate",
             CheckKind::ThicknessForFire => "thickness for fire",
             CheckKind::Uplift => "uplift at far support",
+            CheckKind::LayersFit => "layers fit",
         }
     }
 

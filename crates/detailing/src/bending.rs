@@ -25,6 +25,15 @@ pub enum Shape {
         /// The leg.
         b: f64,
     },
+    /// 13: a semi-circular bend.
+    Hairpin {
+        /// First leg, to the outside of the bend.
+        a: f64,
+        /// Outside to outside across the bend.
+        b: f64,
+        /// Last leg, to the outside of the bend.
+        c: f64,
+    },
     /// 21: two bends of 90 degrees to one side.
     Double {
         /// First leg.
@@ -82,12 +91,13 @@ pub fn down_to_25(mm: f64) -> f64 {
 }
 
 impl Shape {
-    /// `00`, `11` or `21`.
+    /// `00`, `11`, `13` or `21`.
     #[must_use]
     pub fn code(self) -> &'static str {
         match self {
             Shape::Straight { .. } => "00",
             Shape::Bent { .. } => "11",
+            Shape::Hairpin { .. } => "13",
             Shape::Double { .. } => "21",
         }
     }
@@ -98,22 +108,25 @@ impl Shape {
         match self {
             Shape::Straight { a } => [Some(a), None, None, None, None],
             Shape::Bent { a, b } => [Some(a), Some(b), None, None, None],
-            Shape::Double { a, b, c } => [Some(a), Some(b), Some(c), None, None],
+            Shape::Hairpin { a, b, c } | Shape::Double { a, b, c } => [Some(a), Some(b), Some(c), None, None],
         }
     }
 
-    /// Length of the bar before rounding (BS 8666:2005, Table 3): 00 A; 11 A + B - 0.5 r - d; 21 A + B + C - r - 2 d.
+    /// Length of the bar before rounding (BS 8666:2005, Table 3): 00 A; 11 A + B - 0.5 r - d;
+    /// 13 A + 0.57 B + C - 1.6 d; 21 A + B + C - r - 2 d.
     #[must_use]
     pub fn exact_length_mm(self, size_mm: f64) -> f64 {
         let BarSize { radius_mm: r, .. } = bar_size(size_mm);
         match self {
             Shape::Straight { a } => a,
             Shape::Bent { a, b } => a + b - 0.5 * r - size_mm,
+            Shape::Hairpin { a, b, c } => a + 0.57 * b + c - 1.6 * size_mm,
             Shape::Double { a, b, c } => a + b + c - r - 2.0 * size_mm,
         }
     }
 
-    /// Length of the bar as scheduled: up to whole 25 mm; a straight bar is cut to its A.
+    /// Length of the bar as scheduled: up to whole 25 mm; a straight bar is cut to its A, which is whole 25 mm where there is
+    /// room and whole 5 mm where there is not.
     #[must_use]
     pub fn length_mm(self, size_mm: f64) -> f64 {
         match self {
@@ -122,8 +135,8 @@ impl Shape {
         }
     }
 
-    /// Whether it can be bent: 11: A and B, 21: A and C at least the end projection P of BS 8666:2005 Table 2; 21: B at least
-    /// 2 (r + d), so that two bends fit.
+    /// Whether it can be bent: 11: A and B, 13 and 21: A and C at least the end projection P of BS 8666:2005 Table 2; 13: B at
+    /// least 2 (r + d), A and C at least B/2 + 5 d; 21: B at least 2 r + 6 d, so that 4 d between the bends are straight.
     ///
     /// # Errors
     /// The first dimension that is too short.
@@ -140,10 +153,23 @@ impl Shape {
             Shape::Straight { a } => least('A', a, DIMENSION_STEP_MM),
             Shape::Bent { a, b } => least('A', a, p).and_then(|()| least('B', b, p)),
             Shape::Double { a, b, c } => least('A', a, p)
-                .and_then(|()| least('B', b, 2.0 * (r + size_mm)))
+                .and_then(|()| least('B', b, least_between_bends(size_mm)))
                 .and_then(|()| least('C', c, p)),
+            Shape::Hairpin { a, b, c } => {
+                let leg = p.max(b / 2.0 + 5.0 * size_mm);
+                least('A', a, leg)
+                    .and_then(|()| least('B', b, 2.0 * (r + size_mm)))
+                    .and_then(|()| least('C', c, leg))
+            }
         }
     }
+}
+
+/// Least dimension outside to outside between two bends to one side, mm: 2 r + 6 d, of which 4 d are straight (BS 8666:2005,
+/// 8; from memory).
+#[must_use]
+pub fn least_between_bends(size_mm: f64) -> f64 {
+    2.0 * bar_size(size_mm).radius_mm + 6.0 * size_mm
 }
 
 /// Mass of a bar, kg (BS 4449, the rounded masses per metre).

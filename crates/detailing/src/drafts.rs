@@ -76,7 +76,7 @@ pub(crate) fn runs(placed: &[Placed], holes: &[Hole], common: &Common<'_>) -> Ve
     let mut made = Vec::with_capacity(placed.len());
     for bar in placed {
         for ends in cut(bar, holes) {
-            let Some((along, shape)) = make(ends) else { continue };
+            let Some((along, shape)) = make(ends, common.size_mm) else { continue };
             let is_piece = ends != bar.ends;
             if is_piece && along[1] - along[0] < LEAST_PIECE_SIZES * common.size_mm {
                 continue;
@@ -123,7 +123,7 @@ fn pieces(across: f64, along: [f64; 2], shape: Shape, common: &Common<'_>) -> Ve
         Shape::Straight { .. } => [None, None],
         // Which end is bent is not kept in the shape: the leg stays at the first piece, where it may be either end.
         Shape::Bent { b, .. } => [Some(b), None],
-        Shape::Double { a, c, .. } => [Some(a), Some(c)],
+        Shape::Double { a, c, .. } | Shape::Hairpin { a, c, .. } => [Some(a), Some(c)],
     };
     let lap = common.lap();
     let total = along[1] - along[0];

@@ -1,6 +1,6 @@
 //! A bar on plan while it is being made: where it must reach, how far it may, how it ends.
 
-use crate::bending::{Shape, down_to_5, down_to_25, up_to_5, up_to_25};
+use crate::bending::{Shape, down_to_5, down_to_25, least_between_bends, up_to_5, up_to_25};
 
 /// How a bar ends.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -49,7 +49,7 @@ pub(crate) struct Placed {
 }
 
 /// Extents on plan and shape of a bar made to its ends; none where nothing is left of it.
-pub(crate) fn make(ends: [Reach; 2]) -> Option<([f64; 2], Shape)> {
+pub(crate) fn make(ends: [Reach; 2], size_mm: f64) -> Option<([f64; 2], Shape)> {
     let [low, high] = ends;
     // A limit inside what is needed binds.
     let needed = [low.needed.max(low.limit), high.needed.min(high.limit)];
@@ -75,17 +75,23 @@ pub(crate) fn make(ends: [Reach; 2]) -> Option<([f64; 2], Shape)> {
         }
         (End::Hook { height_mm, back_mm }, _) => {
             let a = dimension(needed, room);
-            Some(([low.limit, low.limit + a], hooked(a, height_mm, back_mm)))
+            Some(([low.limit, low.limit + a], hooked(a, height_mm, back_mm, size_mm)))
         }
         (_, End::Hook { height_mm, back_mm }) => {
             let a = dimension(needed, room);
-            Some(([high.limit - a, high.limit], hooked(a, height_mm, back_mm)))
+            Some(([high.limit - a, high.limit], hooked(a, height_mm, back_mm, size_mm)))
         }
     }
 }
 
-fn hooked(a: f64, height_mm: f64, back_mm: f64) -> Shape {
-    Shape::Double { a, b: down_to_5(height_mm), c: up_to_5(back_mm) }
+/// Two bends with a straight between them, or one half round where there is no room for that.
+fn hooked(a: f64, height_mm: f64, back_mm: f64, size_mm: f64) -> Shape {
+    let (b, c) = (down_to_5(height_mm), up_to_5(back_mm));
+    if b >= least_between_bends(size_mm) - 1e-6 {
+        Shape::Double { a, b, c }
+    } else {
+        Shape::Hairpin { a, b, c: c.max(up_to_5(b / 2.0 + 5.0 * size_mm)) }
+    }
 }
 
 /// A dimension that reaches what is needed, up to 5 mm, or down where there is no room.

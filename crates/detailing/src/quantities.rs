@@ -2,7 +2,7 @@
 
 use std::collections::BTreeMap;
 
-use design_engine::floor::Floor;
+use design_engine::floor::{Floor, PanelOpening};
 
 use crate::bending::mass_kg;
 use crate::model::{BarSet, ScheduledBar, Use};
@@ -46,13 +46,34 @@ fn number(count: usize) -> f64 {
     count as f64
 }
 
+/// Area that openings take, what overlaps counted once, m2.
+fn area_of_openings_m2(openings: &[PanelOpening]) -> f64 {
+    let along = |o: &PanelOpening| [o.from_west_m, o.from_west_m + o.widths_m[0]];
+    let across = |o: &PanelOpening| [o.from_south_m, o.from_south_m + o.widths_m[1]];
+    let mut cuts: Vec<f64> = openings.iter().flat_map(along).collect();
+    cuts.sort_by(f64::total_cmp);
+    let strip = |pair: &[f64]| {
+        let middle = f64::midpoint(pair[0], pair[1]);
+        let over = openings.iter().filter(|o| along(o)[0] < middle && middle < along(o)[1]);
+        let mut taken: Vec<[f64; 2]> = over.map(across).collect();
+        taken.sort_by(|a, b| a[0].total_cmp(&b[0]));
+        let mut reached = f64::NEG_INFINITY;
+        let mut width = 0.0;
+        for [from, to] in taken {
+            width += (to - from.max(reached)).max(0.0);
+            reached = reached.max(to);
+        }
+        width * (pair[1] - pair[0])
+    };
+    cuts.windows(2).map(strip).sum()
+}
+
 /// Quantities from the marks, in order of marks; laps and trimmers from the sets.
 pub(crate) fn quantities(floor: &Floor, bars: &[ScheduledBar], sets: &[BarSet]) -> Quantities {
     let net = |area: f64, openings: f64| (area - openings).max(0.0);
     let mut quantities = Quantities::default();
     for panel in &floor.panels {
-        let openings: f64 = panel.openings.iter().map(|o| o.widths_m[0] * o.widths_m[1]).sum();
-        let area = net(panel.area_m2(), openings);
+        let area = net(panel.area_m2(), area_of_openings_m2(&panel.openings));
         quantities.formwork_m2 += area;
         quantities.concrete_m3 += area * panel.thickness_mm / 1000.0;
     }

@@ -120,10 +120,11 @@ fn facing_pairs(axis: Axis, edges: &LineEdges, facing: &LineEdges) -> Vec<[Party
     pairs
 }
 
-/// Edges stated continuous over a joint, a step or nothing at all: one warning an edge. Two statements that deny each
-/// other are an error: neither can win.
+/// Edges stated continuous over a step or nothing at all: one warning an edge. Over a movement joint, which no bar
+/// crosses, or against a statement from the other side it is an error: neither can win.
 fn warn_of_contradictions(plan: &Plan<'_>, queries: &mut Vec<Query>) {
-    let mut told = std::collections::BTreeSet::new();
+    let mut warned = std::collections::BTreeSet::new();
+    let mut refused = std::collections::BTreeSet::new();
     for meeting in plan.meetings {
         let [near, far] = plan.parties(meeting);
         for (me, other) in [(near, far), (far, near)] {
@@ -143,10 +144,14 @@ fn warn_of_contradictions(plan: &Plan<'_>, queries: &mut Vec<Query>) {
                 ));
                 continue;
             }
+            if plan.stretches.has_joint(meeting.line, meeting.run) {
+                if refused.insert((me.panel, me.side)) {
+                    queries.push(continuous_over_a_joint(plan, me));
+                }
+                continue;
+            }
             let over = if other.is_none() {
                 " with no panel beyond: nothing here balances its moment".to_owned()
-            } else if meeting.joint {
-                format!(" over a movement joint on gridline {}", plan.line_name(me))
             } else if !meeting.held {
                 " over a stretch without support (Supports sheet)".to_owned()
             } else if let Some(step_mm) = other.map(|other| plan.step_mm(me.panel, other.panel))
@@ -156,7 +161,7 @@ fn warn_of_contradictions(plan: &Plan<'_>, queries: &mut Vec<Query>) {
             } else {
                 continue;
             };
-            if told.insert((me.panel, me.side)) {
+            if warned.insert((me.panel, me.side)) {
                 queries.push(Query::new(
                     Severity::Warning,
                     Subject::Edge { mark: plan.mark(me.panel).to_owned(), side: me.side },
@@ -166,6 +171,18 @@ fn warn_of_contradictions(plan: &Plan<'_>, queries: &mut Vec<Query>) {
             }
         }
     }
+}
+
+fn continuous_over_a_joint(plan: &Plan<'_>, me: Party) -> Query {
+    Query::new(
+        Severity::Error,
+        Subject::Edge { mark: plan.mark(me.panel).to_owned(), side: me.side },
+        format!(
+            "stated continuous, while a movement joint runs along it on gridline {}: no bar crosses a joint",
+            plan.line_name(me)
+        ),
+        "leave the cell blank or state it discontinuous, or end the joint's row at a crossing gridline before the edge",
+    )
 }
 
 /// One note for each gridline with a joint between panels: what its detail must give.

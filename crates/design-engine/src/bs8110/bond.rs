@@ -49,8 +49,9 @@ pub fn anchorage_mm(bar_mm: f64, criteria: &Criteria) -> f64 {
     bar_mm * tension_multiple(criteria.fcu_n_mm2, criteria.fy_n_mm2, criteria.steel_partial_factor())
 }
 
-/// Tension lap, mm: the anchorage length times the factor of 3.12.8.13, not under 15 sizes or 300 mm (3.12.8.11).
+/// Tension lap, mm: the anchorage multiple times the factor of 3.12.8.13, up to a whole multiple of the size, not under 15 sizes or 300 mm (3.12.8.11).
 #[must_use]
 pub fn lap_mm(bar_mm: f64, place: LapPlace, criteria: &Criteria) -> f64 {
-    (anchorage_mm(bar_mm, criteria) * lap_factor(bar_mm, place)).max(15.0 * bar_mm).max(300.0)
+    let multiple = anchorage_mm(bar_mm, criteria) / bar_mm * lap_factor(bar_mm, place);
+    ((multiple - 1e-9).ceil() * bar_mm).max(15.0 * bar_mm).max(300.0)
 }

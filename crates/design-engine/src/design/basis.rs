@@ -1,5 +1,6 @@
 //! Effective spans, short direction, action and case of every panel.
 
+use super::openings::greatest_share_taken;
 use crate::bs8110::coefficients::PanelCase;
 use crate::criteria::{Criteria, SpanBasis};
 use crate::floor::{Axis, Corners, EdgeState, Floor, Panel, PanelId, Side, Span, Spanning};
@@ -210,12 +211,9 @@ fn settle_panel(
     // The short span of a square panel that carries one way is the one that carries.
     let square = (spans[0] - spans[1]).abs() <= tolerance_m + 1e-9 && !panel.is_loose();
     let short_if_carrying = |axis: Axis| if square { axis } else { short_along };
-    let share = |axis: Axis, widths: [f64; 2]| widths[axis as usize] / panel.span_m(axis);
-    let greatest = panel.openings.iter().flat_map(|o| [Axis::X, Axis::Y].map(|axis| share(axis, o.widths_m)));
-    if greatest.fold(0.0, f64::max) > GREATEST_OPENING_SHARE {
-        return Err(
-            "an opening takes more than half of a span: what is left is not a slab on four sides".to_owned()
-        );
+    if greatest_share_taken(panel) > GREATEST_OPENING_SHARE + 1e-9 {
+        let takes = if panel.openings.len() == 1 { "an opening takes" } else { "openings take" };
+        return Err(format!("{takes} more than half of a span: what is left is not a slab on four sides"));
     }
     if panel.spanning == Spanning::Cantilever {
         let Some(root) = Side::ALL.into_iter().find(|side| states[side.index()] == EdgeState::Continuous)

@@ -50,6 +50,7 @@ impl BottomTask<'_> {
             floor_steel_mm2_m: 0.0,
             d_mm: (self.fixed.thickness_mm - cover_to_bars_mm - bars.bar_mm / 2.0).max(1.0),
             h_mm: self.fixed.thickness_mm,
+            least_h_mm: self.fixed.thickness_mm,
             cover_to_bars_mm,
             nominal_cover_mm: criteria.bottom_cover_mm,
             k_limit: K_LIMIT,

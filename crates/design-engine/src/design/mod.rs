@@ -327,8 +327,16 @@ impl<'a> Stage<'a> {
         }
         if let Some(basis) = &design.basis {
             let View { floor, criteria, .. } = self.view;
-            design.corners =
-                corners::corners(floor, criteria, panel, basis, &assembled.sections, &design.bars, &supports, designs);
+            design.corners = corners::corners(
+                floor,
+                criteria,
+                panel,
+                basis,
+                &assembled.sections,
+                &design.bars,
+                &supports,
+                designs,
+            );
             design.openings = openings::openings(panel, basis, &assembled.sections, designs);
         }
         design.sections = assembled.sections;

@@ -3,7 +3,7 @@
 use super::balance::{SupportMoment, balanced_midspans};
 use super::bottom::{BottomBarsChosen, BottomTask, deflection_check};
 use super::fixed::Fixed;
-use super::section::{Trial, worst_ratio};
+use super::section::{Trial, layers_fit, worst_ratio};
 use super::top::{SideTask, TopTask};
 use super::view::View;
 use crate::bs8110::cover::{DurabilityCover, durability, fire};
@@ -100,6 +100,7 @@ pub(crate) fn assemble(
     hogging_midspans(task, balanced, supports, &mut sections, &mut checks);
     uplift_checks(view, id, task.fixed, supports, &mut checks);
     panel_checks(view.criteria, task.fixed, &mut checks);
+    checks.push(layers_fit(&sections, task.fixed.thickness_mm, view.criteria));
     let main = task.fixed.basis.main_span;
     let outer_mm = if main == outer_span { 0.0 } else { bottom[outer_span as usize].bar_mm };
     let (deflection, _) = task.deflection(&task.trial(main, bottom[main as usize], outer_mm));
@@ -149,6 +150,7 @@ pub(crate) fn assemble_cantilever(
     sections.push(spread);
     support_sections(view.criteria, id, fixed, supports, &mut sections, &mut checks);
     panel_checks(view.criteria, fixed, &mut checks);
+    checks.push(layers_fit(&sections, fixed.thickness_mm, view.criteria));
     let root = supports.first()?;
     let root = root.task.trial(Place::Side(root.side), root.bars);
     Some(Assembled { sections, checks, deflection: deflection_check(view.criteria, fixed, &root).0 })
@@ -175,6 +177,7 @@ pub(crate) fn distribution(
         floor_steel_mm2_m: 0.0,
         d_mm: (fixed.thickness_mm - cover - bars.bar_mm / 2.0).max(1.0),
         h_mm: fixed.thickness_mm,
+        least_h_mm: fixed.thickness_mm,
         cover_to_bars_mm: cover,
         nominal_cover_mm: criteria.top_cover_mm,
         k_limit: K_LIMIT,

@@ -1,13 +1,16 @@
 //! What a finished design has to say: queries and printed assumptions.
 
+use super::openings::over_quarter_alone;
 use crate::check::{CheckKind, Place};
 use crate::criteria::{Coefficients, Criteria, EdgeStrips, SETTINGS, Value};
-use crate::floor::{Corners, EdgeState, Floor, PanelId, Side, Span, SupportKind};
+use crate::floor::{Corners, EdgeState, Floor, Panel, PanelId, Side, Span, SupportKind};
 use crate::query::{Query, Severity, Subject};
 use crate::result::{Action, PanelDesign, SupportDesign};
 
 /// Ratios of neighbours' loads or spans outside this and its inverse are a warning (decision).
 const LEAST_NEIGHBOUR_RATIO: f64 = 0.5;
+/// Partial factors on dead and imposed load, adverse (Table 2.1).
+const LEAST_LOAD_FACTORS: [f64; 2] = [1.4, 1.6];
 /// Settings that this version reads and does not use.
 const NOT_YET_USED: [&str; 9] = [
     "thickness_options_mm",
@@ -40,7 +43,9 @@ pub(crate) fn of_design(
     for design in supports {
         of_support(floor, panels, design, &mut queries);
     }
+    negative_support_loads(floor, panels, &mut queries);
     similar_neighbours(supports, &mut queries);
+    low_load_factors(criteria, &mut queries);
     settings_not_applied(criteria, &mut queries);
     queries
 }
@@ -87,7 +92,7 @@ fn of_panel(floor: &Floor, design: &PanelDesign, queries: &mut Vec<Query>) {
         );
         say(Severity::Warning, text, "check the panel by plate analysis, or put a beam under the wall");
     }
-    of_openings(design, &mut say);
+    of_openings(panel, design, &mut say);
     for span in [Span::Short, Span::Long] {
         let at = if span == Span::Short { Place::ShortMidspan } else { Place::LongMidspan };
         let hogs =
@@ -126,20 +131,24 @@ fn remedy_of(design: &PanelDesign) -> &'static str {
         "change the chosen bars, or the sizes and spacings allowed"
     } else if failed(|kind| kind == CheckKind::Uplift) {
         "hold the far support down, or change the spans"
+    } else if failed(|kind| kind == CheckKind::LayersFit) {
+        "raise the thickness, or allow smaller bars"
     } else {
         "see its rows on the Checks sheet; change the thickness, the bars allowed or the loads"
     }
 }
 
-fn of_openings(design: &PanelDesign, say: &mut dyn FnMut(Severity, String, &str)) {
+fn of_openings(panel: &Panel, design: &PanelDesign, say: &mut dyn FnMut(Severity, String, &str)) {
     for (number, opening) in (1..).zip(&design.openings) {
         let [x, y] = opening.opening.widths_m;
         let name = format!("opening {number}, {x:.2} x {y:.2} m");
         if opening.over_quarter_of_span || opening.within_d_of_support {
-            let why = if opening.over_quarter_of_span {
+            let why = if !opening.over_quarter_of_span {
+                "within d of a support"
+            } else if over_quarter_alone(panel, &opening.opening) {
                 "wider than a quarter of a span"
             } else {
-                "within d of a support"
+                "with others on one line across the panel wider than a quarter of a span"
             };
             say(
                 Severity::Warning,
@@ -205,6 +214,44 @@ fn of_support(floor: &Floor, panels: &[PanelDesign], design: &SupportDesign, que
                     "check these panels by analysis",
                 );
             }
+        }
+    }
+}
+
+/// Sides on which a panel's load as designed pulls at its support.
+fn negative_support_loads(floor: &Floor, panels: &[PanelDesign], queries: &mut Vec<Query>) {
+    for design in panels {
+        let panel = floor.panel(design.panel);
+        for side in Side::ALL.into_iter().filter(|side| panel.edge(*side).state != EdgeState::Free) {
+            let load = design.side_loads[side.index()].map_or(0.0, |load| load.ultimate_kn_m);
+            if load < -1e-9 {
+                let text = format!(
+                    "the load of {} on its support here is {load:.2} kN/m, below zero: the panel lifts off it",
+                    panel.mark
+                );
+                queries.push(Query::new(
+                    Severity::Warning,
+                    Subject::Edge { mark: panel.mark.clone(), side },
+                    text,
+                    "hold the slab down there, or change the spans; design the support for the load from its other side alone",
+                ));
+            }
+        }
+    }
+}
+
+/// Factors below those of Table 2.1 are used as given, and said.
+fn low_load_factors(criteria: &Criteria, queries: &mut Vec<Query>) {
+    let given = [criteria.dead_load_factor, criteria.imposed_load_factor];
+    let named = [("Dead load factor", "dead"), ("Imposed load factor", "imposed")];
+    for ((factor, least), (item, load)) in given.into_iter().zip(LEAST_LOAD_FACTORS).zip(named) {
+        if factor < least - 1e-9 {
+            queries.push(Query::new(
+                Severity::Warning,
+                Subject::Setting(item),
+                format!("{factor} is under the {least} of Table 2.1 for {load} load, and used as given"),
+                "leave it blank for the factor of Table 2.1, or say in the Remark what allows less",
+            ));
         }
     }
 }

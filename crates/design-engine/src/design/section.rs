@@ -4,7 +4,8 @@ use crate::bs8110::flexure::{Flexure, bending, maximum_steel, minimum_steel, ste
 use crate::bs8110::spacing::{greatest_clear, least_gap};
 use crate::check::{Check, CheckKind, Place};
 use crate::criteria::Criteria;
-use crate::floor::BarChoice;
+use crate::floor::{BarChoice, Layer};
+use crate::result::Section;
 
 /// A section with its bars chosen (or being tried).
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -19,6 +20,8 @@ pub(crate) struct Trial {
     pub(crate) d_mm: f64,
     /// Thickness for minimum steel and the spacing rules, mm.
     pub(crate) h_mm: f64,
+    /// Thickness of the thinner slab of a support, for maximum steel, mm; elsewhere `h_mm`.
+    pub(crate) least_h_mm: f64,
     /// Cover to these bars, those outside them counted, mm.
     pub(crate) cover_to_bars_mm: f64,
     /// Nominal cover to the outermost bar, mm.
@@ -75,7 +78,7 @@ impl Trial {
         }
         let least = self.as_minimum(criteria).max(self.floor_steel_mm2_m);
         give(Check::at_most(CheckKind::MinimumSteel, at, "Table 3.25", least, provided, "mm2/m"));
-        let most = maximum_steel(self.h_mm);
+        let most = maximum_steel(self.least_h_mm);
         give(Check::at_most(CheckKind::MaximumSteel, at, "3.12.6.1", provided, most, "mm2/m"));
         self.spacing_checks(criteria, provided, give);
         let cover_needed = self.bars.bar_mm.max(criteria.maximum_aggregate_mm);
@@ -127,6 +130,17 @@ impl Trial {
             && spacing - self.bars.bar_mm <= self.greatest_clear_for(criteria, provided) + 1e-9
             && provided >= least - 1e-9
     }
+}
+
+/// Whether the covers and the largest bar of each layer of a panel find room in its thickness (geometry); a layer without
+/// bars takes none. Bars of one layer lie side by side, so each layer is as thick as its largest bar.
+pub(crate) fn layers_fit(sections: &[Section], thickness_mm: f64, criteria: &Criteria) -> Check {
+    let largest = |layer: Layer| {
+        sections.iter().filter(|section| section.layer == layer).map(|s| s.bars.bar_mm).fold(0.0, f64::max)
+    };
+    let layers: f64 = [Layer::B1, Layer::B2, Layer::T1, Layer::T2].map(largest).iter().sum();
+    let needed = criteria.bottom_cover_mm + criteria.top_cover_mm + layers;
+    Check::at_most(CheckKind::LayersFit, Place::Panel, "geometry", needed, thickness_mm, "mm")
 }
 
 /// The worst ratio of a run of checks; a thing not allowed at all counts as 1e9.

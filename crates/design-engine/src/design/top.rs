@@ -107,6 +107,7 @@ impl<'a> TopTask<'a> {
             floor_steel_mm2_m: self.crossing_steel_mm2_m,
             d_mm: self.depth(bars.bar_mm),
             h_mm: greatest(|side| side.fixed.thickness_mm),
+            least_h_mm: least(|side| side.fixed.thickness_mm),
             cover_to_bars_mm: criteria.top_cover_mm + self.outer_mm,
             nominal_cover_mm: criteria.top_cover_mm,
             k_limit: least(|side| side.fixed.support_k_limit),

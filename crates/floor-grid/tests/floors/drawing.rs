@@ -194,10 +194,10 @@ fn give(layout: &mut Layout, line: &str) {
                 other => panic!("no such spanning: {other}"),
             };
         }
-        ["opening", mark] => layout.openings.push(Opening {
+        ["opening", mark, ref corner @ ..] => layout.openings.push(Opening {
             panel: mark.to_owned(),
-            from_west_m: 1.0,
-            from_south_m: 1.0,
+            from_west_m: corner.first().map_or(1.0, |west| west.parse().unwrap()),
+            from_south_m: corner.last().map_or(1.0, |south| south.parse().unwrap()),
             width_x_m: 0.6,
             width_y_m: 0.6,
             remark: String::new(),

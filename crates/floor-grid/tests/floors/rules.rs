@@ -164,3 +164,21 @@ fn a_slab_over_ratio_two_free_on_its_long_edges_carries_along_its_long_span() {
     assert_eq!(floor.panels[0].not_designed, None);
     assert!(queries.is_empty());
 }
+
+#[test]
+fn an_edge_stated_continuous_over_a_joint_anywhere_along_it_is_one_error() {
+    let edge = |side| Subject::Edge { mark: "P".to_owned(), side };
+    let errors = |rows: &str| {
+        let (_, queries) = drawn(&format!("{rows}\n{T_JUNCTION}"));
+        subjects(&queries, Severity::Error).into_iter().cloned().collect::<Vec<_>>()
+    };
+    // Over part of the edge, over two joints along it, and where no panel lies beyond.
+    assert_eq!(errors("edge P south continuous\njoint B 1 2"), [edge(Side::South)]);
+    assert_eq!(errors("edge P south continuous\njoint B 1 2\njoint B 2 3"), [edge(Side::South)]);
+    assert_eq!(errors("edge P north continuous\njoint C"), [edge(Side::North)]);
+    assert_eq!(errors("edge P south continuous\njoint C"), []);
+    assert_eq!(errors("edge P south discontinuous\njoint B"), []);
+    // A step along the rest of the edge is still warned of.
+    let (_, queries) = drawn(&format!("edge P south continuous\njoint B 1 2\nlevel R 40\n{T_JUNCTION}"));
+    assert_eq!(subjects(&queries, Severity::Warning), [&edge(Side::South)]);
+}

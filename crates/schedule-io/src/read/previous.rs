@@ -145,6 +145,7 @@ impl<'a> Columns<'a> {
         let shape = match self.text(row, "Shape code").trim_start_matches('0') {
             "" => Shape::Straight { a: dimension("A")? },
             "11" => Shape::Bent { a: dimension("A")?, b: dimension("B")? },
+            "13" => Shape::Hairpin { a: dimension("A")?, b: dimension("B")?, c: dimension("C")? },
             "21" => Shape::Double { a: dimension("A")?, b: dimension("B")?, c: dimension("C")? },
             _ => return None,
         };

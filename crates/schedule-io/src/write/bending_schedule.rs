@@ -159,7 +159,7 @@ pub(super) fn columns<'a>() -> Vec<Column<'a, ScheduleRow<'a>>> {
             .means("length by BS 8666:2005, up to whole 25 mm"),
         Column::short("Shape code", 7.0, |r: &ScheduleRow<'a>| r.bar.map(|bar| bar.bar.shape.code()))
             .key("shape")
-            .means("BS 8666:2005: 00 straight, 11 one bend, 21 two bends"),
+            .means("BS 8666:2005: 00 straight, 11 one bend, 13 half round, 21 two bends"),
         dimension("A", 0, "first dimension, whole 5 mm").key("a_mm"),
         dimension("B", 1, "second dimension").key("b_mm"),
         dimension("C", 2, "third dimension").key("c_mm"),
