@@ -25,6 +25,7 @@ fn shape(code: &str, [a, b, c]: [f64; 3]) -> Shape {
     match code {
         "00" => Shape::Straight { a },
         "11" => Shape::Bent { a, b },
+        "13" => Shape::Hairpin { a, b, c },
         "21" => Shape::Double { a, b, c },
         other => panic!("no shape {other}"),
     }
@@ -47,7 +48,7 @@ fn centre_line(dimensions: &[f64], bar: BarSize) -> f64 {
 fn lengths_follow_the_printed_formulas_for_every_size() {
     let dimensions = [1235.0, 640.0, 865.0];
     let rows = rows(FORMULAS);
-    assert_eq!(rows.len(), 3);
+    assert_eq!(rows.len(), 4);
     for row in &rows {
         let sum: f64 = (0..3).map(|i| number(row[i + 1]) * dimensions[i]).sum();
         for bar in BAR_SIZES {
@@ -60,7 +61,7 @@ fn lengths_follow_the_printed_formulas_for_every_size() {
 #[test]
 fn lengths_worked_by_hand_come_out() {
     let rows = rows(LENGTHS);
-    assert_eq!(rows.len(), 12);
+    assert_eq!(rows.len(), 13);
     for row in &rows {
         let bent = shape(row[0], [number(row[2]), number(row[3]), number(row[4])]);
         close(bent.exact_length_mm(number(row[1])), number(row[5]), 1e-9);
@@ -199,4 +200,25 @@ proptest! {
         let length = shape("00", [a, 0.0, 0.0]).length_mm(BAR_SIZES[size].size_mm);
         prop_assert!((length - a).abs() < 1e-9);
     }
+}
+
+#[test]
+fn a_half_round_bend_is_its_legs_and_half_a_circle() {
+    // Centre line: (A - B/2) + (C - B/2) + pi (B - d)/2; the standard's 0.57 B and 1.6 d are that, rounded.
+    for (a, b, c, d) in [(900.0, 75.0, 200.0, 10.0), (1500.0, 95.0, 300.0, 12.0), (700.0, 60.0, 120.0, 8.0)] {
+        let exact = a + c - b + std::f64::consts::PI * (b - d) / 2.0;
+        close(Shape::Hairpin { a, b, c }.exact_length_mm(d), exact, 0.1 * d + 0.01 * b);
+    }
+    // Between bends of 10 mm bars: 4 d straight and two bends are 100 mm; half round from 60 mm on.
+    let ok = |shape: Shape| shape.check(10.0).is_ok();
+    assert!(
+        ok(Shape::Double { a: 500.0, b: 100.0, c: 120.0 })
+            && !ok(Shape::Double { a: 500.0, b: 95.0, c: 120.0 })
+    );
+    assert!(
+        ok(Shape::Hairpin { a: 500.0, b: 60.0, c: 120.0 })
+            && !ok(Shape::Hairpin { a: 500.0, b: 55.0, c: 120.0 })
+    );
+    // C at least B/2 + 5 d.
+    assert!(!ok(Shape::Hairpin { a: 500.0, b: 160.0, c: 125.0 }));
 }

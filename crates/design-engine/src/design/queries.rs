@@ -282,16 +282,6 @@ fn similar_neighbours(supports: &[SupportDesign], queries: &mut Vec<Query>) {
 
 /// Settings that are read but not applied by this version are said, never passed over.
 fn settings_not_applied(criteria: &Criteria, queries: &mut Vec<Query>) {
-    let mut say = |item, text: &str, remedy: &str| {
-        queries.push(Query::new(Severity::Warning, Subject::Setting(item), text, remedy));
-    };
-    if criteria.edge_strips == EdgeStrips::MinimumSteel {
-        say(
-            "Edge strips",
-            "minimum steel in the edge strips is not applied: the middle-strip bars are given over the full width",
-            "more steel than asked; nothing to do",
-        );
-    }
     let read_only: Vec<&str> = SETTINGS
         .iter()
         .filter(|setting| NOT_YET_USED.contains(&setting.key) && criteria.value(setting) != Value::Blank)
@@ -327,11 +317,14 @@ pub(crate) fn assumptions(floor: &Floor, criteria: &Criteria, panels: &[PanelDes
         Coefficients::Equations => "Two-way moments from equations 12 to 18; shears from Table 3.15.".to_owned(),
     });
     list.push("The midspan moment for bottom steel and deflection is never below the table's: a neighbour may be unloaded.".to_owned());
-    list.push("Top bars at discontinuous edges (3.12.10.3.2), distribution bars over supports and trimming bars at openings are not among the bars listed; the first are counted as present at corners and for the depth of T2 bars.".to_owned());
-    list.push("Bottom bars of a panel's middle strip are given over its full width.".to_owned());
+    list.push(match criteria.edge_strips {
+        EdgeStrips::MinimumSteel => "Edge strips (an eighth of the width each side) of restrained two-way panels carry minimum bottom steel; top bars over supports run over the full width.",
+        EdgeStrips::AsMiddleStrip => "Bottom bars of a panel's middle strip are given over its full width.",
+    }.to_owned());
+    list.push("Bars of neighbouring panels meet at the centre line of their support; those that come in from both sides interleave.".to_owned());
     let restrained = |d: &PanelDesign| d.basis.is_some_and(|b| b.action == Action::TwoWayRestrained);
     if any(&restrained) {
-        list.push("Corners of restrained two-way panels are held down; the torsion steel to be added there (3.5.3.5) is on the Corners sheet and not in the bars listed.".to_owned());
+        list.push("Corners of restrained two-way panels are held down; the torsion steel to be added there (3.5.3.5) is on the Corners sheet, its bars on the bending schedule.".to_owned());
     }
     if criteria.corners == Corners::FreeToLift && any(&restrained) {
         list.push("Corners free to lift applies only to panels discontinuous on all four edges; the others are designed with corners held down.".to_owned());
