@@ -27,6 +27,8 @@ pub(crate) fn text(designed: &Designed, outputs: &[Output], paint: Paint) -> Str
         queries(designed, Severity::NotDesigned, paint),
         queries(designed, Severity::Warning, paint),
         vec![counts_of_queries(designed)],
+        steel(designed),
+        changes(designed),
         files(outputs),
     ];
     let mut text = String::new();
@@ -201,6 +203,29 @@ fn counts_of_queries(designed: &Designed) -> String {
         counted(of(Severity::Warning), "warning"),
         counted(of(Severity::Note), "note")
     )
+}
+
+/// Marks and steel of the floor.
+fn steel(designed: &Designed) -> Vec<String> {
+    let quantities = &designed.bars.quantities;
+    let per_m3 =
+        quantities.steel_kg_m3().map_or_else(String::new, |kg| format!(", {kg:.0} kg/m3 of concrete"));
+    let marks = counted(designed.bars.bars.len(), "bar mark");
+    vec![format!("Bars: {marks}, {:.0} kg{per_m3}", quantities.steel_kg)]
+}
+
+/// What differs from the issue before.
+fn changes(designed: &Designed) -> Vec<String> {
+    let Some(changes) = &designed.changes else { return Vec::new() };
+    let bars = changes.iter().filter(|change| change.difference_kg.is_some()).count();
+    let kg: f64 = changes.iter().filter_map(|change| change.difference_kg).sum();
+    vec![
+        format!(
+            "Against the previous issue: {}, {kg:+.0} kg; inputs and reasons are on the sheet Changes",
+            counted(bars, "changed bar mark")
+        ),
+        "Columns, notes and colours added to the previous workbook are not carried over".to_owned(),
+    ]
 }
 
 fn files(outputs: &[Output]) -> Vec<String> {

@@ -1,6 +1,8 @@
 //! The issue before: what a schedule workbook tells the next issue. Only the format cell of `Cover` and the sheet `Register`
 //! are read, columns by their headings in any order; whatever else was added does no harm.
 
+use std::collections::BTreeMap;
+use std::io::Cursor;
 use std::path::Path;
 
 use calamine::{Data, Reader as _, Xlsx};
@@ -8,6 +10,9 @@ use detailing::bending::Shape;
 use detailing::inputs::Inputs;
 use detailing::model::Bar;
 use detailing::reissue::{Register, RegisteredBar};
+
+use super::unpacked::stated_size;
+use crate::limits;
 
 /// Between the panels of a bar.
 pub(crate) const PANELS_BETWEEN: &str = " | ";
@@ -18,6 +23,8 @@ pub(crate) const FORMAT_LABEL: &str = "Workbook format";
 /// See [`FORMAT_LABEL`].
 pub(crate) const FORMAT: &str = "baymat 1";
 const REGISTER: &str = "Register";
+/// Greatest size of a workbook that is read, bytes.
+const MOST_BYTES: u64 = 200_000_000;
 
 /// Why a workbook is not the previous issue.
 #[derive(Debug, thiserror::Error)]
@@ -40,21 +47,30 @@ fn not_ours(text: impl Into<String>) -> PreviousError {
 /// Where the file cannot be opened, was not written by this program, or its register was changed so that a row cannot be
 /// read.
 pub fn read_previous(path: &Path) -> Result<Register, PreviousError> {
-    let file = std::fs::File::open(path).map_err(|error| PreviousError::CannotOpen(error.to_string()))?;
-    let opened = Xlsx::new(std::io::BufReader::new(file));
-    let mut workbook = opened.map_err(|_| not_ours("it is not an .xlsx workbook"))?;
-    check_format(&mut workbook)?;
-    let range = workbook
-        .worksheet_range(REGISTER)
-        .map_err(|_| not_ours("its sheet Register is gone: without it marks cannot be kept"))?;
-    let rows: Vec<&[Data]> = range.rows().collect();
+    let cannot = |error: std::io::Error| PreviousError::CannotOpen(error.to_string());
+    if std::fs::metadata(path).map_err(cannot)?.len() > MOST_BYTES {
+        return Err(not_ours("it is larger than any schedule workbook of this program"));
+    }
+    let bytes = std::fs::read(path).map_err(cannot)?;
+    match stated_size(&bytes) {
+        Ok(size) if size <= limits::UNPACKED_BYTES => {}
+        Ok(_) => return Err(not_ours("unpacked it is larger than any schedule workbook of this program")),
+        Err(_) => return Err(not_ours("it is not an .xlsx workbook, or it is damaged")),
+    }
+    let mut workbook = Xlsx::new(Cursor::new(bytes))
+        .map_err(|_| not_ours("it is not an .xlsx workbook, or it is damaged"))?;
+    let cover = rows(&mut workbook, "Cover")
+        .ok_or_else(|| not_ours("it has no sheet Cover: not a schedule workbook of this program"))?;
+    check_format(&cover)?;
+    let rows = rows(&mut workbook, REGISTER)
+        .ok_or_else(|| not_ours("its sheet Register is gone: without it marks cannot be kept"))?;
     let head = rows
         .iter()
         .position(|row| {
             row.iter().any(|cell| text(cell) == "Kind") && row.iter().any(|cell| text(cell) == "Mark")
         })
         .ok_or_else(|| not_ours("its sheet Register has no headings Kind and Mark"))?;
-    let columns = Columns::new(rows[head]);
+    let columns = Columns::new(&rows[head]);
     let mut register = Register::default();
     for row in &rows[head + 1..] {
         columns.read(row, &mut register)?;
@@ -62,11 +78,29 @@ pub fn read_previous(path: &Path) -> Result<Register, PreviousError> {
     Ok(register)
 }
 
-fn check_format(workbook: &mut Xlsx<std::io::BufReader<std::fs::File>>) -> Result<(), PreviousError> {
-    let cover = workbook
-        .worksheet_range("Cover")
-        .map_err(|_| not_ours("it has no sheet Cover: not a schedule workbook of this program"))?;
-    let found = cover.rows().find_map(|row| {
+/// The rows of a sheet, streamed: a cell far away costs nothing. None where the sheet cannot be read.
+fn rows(workbook: &mut Xlsx<Cursor<Vec<u8>>>, name: &str) -> Option<Vec<Vec<Data>>> {
+    let mut reader = workbook.worksheet_cells_reader(name).ok()?;
+    let mut rows: BTreeMap<u32, Vec<Data>> = BTreeMap::new();
+    let mut cells = 0;
+    while let Some(cell) = reader.next_cell().ok()? {
+        let (row, column) = cell.get_position();
+        let column = usize::try_from(column).unwrap_or(usize::MAX);
+        if column >= limits::COLUMNS || cells >= limits::CELLS {
+            continue;
+        }
+        cells += 1;
+        let row = rows.entry(row).or_default();
+        if row.len() <= column {
+            row.resize(column + 1, Data::Empty);
+        }
+        row[column] = cell.get_value().clone().into();
+    }
+    Some(rows.into_values().collect())
+}
+
+fn check_format(cover: &[Vec<Data>]) -> Result<(), PreviousError> {
+    let found = cover.iter().find_map(|row| {
         let at = row.iter().position(|cell| text(cell) == FORMAT_LABEL)?;
         row.get(at + 1).map(text)
     });
