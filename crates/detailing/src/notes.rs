@@ -1,5 +1,7 @@
 //! Where each mark goes, and the words beside a callout.
 
+use std::collections::BTreeMap;
+
 use design_engine::criteria::Criteria;
 use design_engine::floor::{Floor, PanelId, Support, SupportId};
 use design_engine::result::FloorDesign;
@@ -22,15 +24,17 @@ pub struct BarPlace {
 #[must_use]
 pub fn places(schedule: &BarSchedule) -> Vec<Vec<BarPlace>> {
     let mut places: Vec<Vec<BarPlace>> = vec![Vec::new(); schedule.bars.len()];
+    let mut known: BTreeMap<(usize, Option<PanelId>, Option<SupportId>), usize> = BTreeMap::new();
     for set in &schedule.sets {
         let over = (set.for_what == Use::OverSupport).then(|| set.supports.first().copied()).flatten();
         let panel = if over.is_none() { Some(set.panel) } else { None };
         for run in &set.runs {
-            let known = &mut places[run.bar];
-            match known.iter_mut().find(|place| place.panel == panel && place.support == over) {
-                Some(place) => place.count += run.count,
-                None => known.push(BarPlace { panel, support: over, count: run.count }),
-            }
+            let of_bar = &mut places[run.bar];
+            let index = *known.entry((run.bar, panel, over)).or_insert_with(|| {
+                of_bar.push(BarPlace { panel, support: over, count: 0 });
+                of_bar.len() - 1
+            });
+            of_bar[index].count += run.count;
         }
     }
     places
