@@ -10,6 +10,8 @@ pub(super) enum Cell<'a> {
     Blank,
     Number(f64),
     Text(Cow<'a, str>),
+    /// A live formula with the value that the design has for it.
+    Formula(String, Box<Cell<'a>>),
 }
 
 impl From<f64> for Cell<'_> {

@@ -1,6 +1,8 @@
 //! Sheet `Cover`: title block beside totals, result, caution, layers, assumptions; on its second page the
 //! basis of design with every default marked.
 
+use std::collections::BTreeMap;
+
 use design_engine::criteria::{Setting, Value, setting};
 use rust_xlsxwriter::Worksheet;
 
@@ -128,26 +130,46 @@ pub(super) fn columns<'a>() -> Vec<Column<'a, CoverRow<'a>>> {
     ]
 }
 
+/// Where the value of a setting stands on the cover, for formulas: `Cover!$B$41`.
+pub(super) fn value_cells(submission: &Submission<'_>) -> Result<BTreeMap<&'static str, String>, WriteError> {
+    let rows = lay_out(submission, &mut Worksheet::new())?;
+    Ok(rows.into_iter().map(|(key, row)| (key, format!("{NAME}!$B${}", row + 1))).collect())
+}
+
 pub(super) fn write(submission: &Submission<'_>, worksheet: &mut Worksheet) -> Result<(), WriteError> {
+    lay_out(submission, worksheet).map(|_| ())
+}
+
+fn lay_out(
+    submission: &Submission<'_>,
+    worksheet: &mut Worksheet,
+) -> Result<BTreeMap<&'static str, u32>, WriteError> {
     let columns = columns();
     let heads: Vec<Head> = columns.iter().map(|column| column.head.clone()).collect();
-    let mut cover =
-        Cover { sink: RowSink::plain(worksheet, NAME, &heads)?, columns, submission: *submission };
+    let mut cover = Cover {
+        sink: RowSink::plain(worksheet, NAME, &heads)?,
+        setting_rows: BTreeMap::new(),
+        columns,
+        submission: *submission,
+    };
     cover.title_block_and_totals()?;
     cover.result()?;
     cover.caution_and_layers()?;
     cover.assumptions()?;
     let second_page = cover.sink.next_row();
     cover.basis()?;
+    let rows = std::mem::take(&mut cover.setting_rows);
     let worksheet = cover.sink.close()?;
     // Spreadsheet programs that fit a sheet to the page's width pass over its page breaks.
     worksheet.set_print_scale(PRINT_SCALE_PCT).set_page_breaks(&[second_page])?;
     worksheet.set_screen_gridlines(false);
-    Ok(())
+    Ok(rows)
 }
 
 struct Cover<'w, 'a> {
     sink: RowSink<'w>,
+    /// Rows of the settings, from 0.
+    setting_rows: BTreeMap<&'static str, u32>,
     columns: Vec<Column<'a, CoverRow<'a>>>,
     submission: Submission<'a>,
 }
@@ -242,6 +264,7 @@ impl<'a> Cover<'_, 'a> {
         }
         let is_default = self.submission.book.defaults_used.iter().any(|default| default.key == setting.key);
         let source = if is_default { "DEFAULT" } else { "stated" };
+        self.setting_rows.insert(setting.key, self.sink.next_row());
         let unit = words::unit(setting.unit);
         let row = [setting.item.into(), value, unit.into(), source.into(), setting.meaning.into()];
         self.row(Tone::Plain, &CoverRow(row))

@@ -33,6 +33,7 @@ mod title_block;
 mod totals;
 mod words;
 mod workbook;
+mod working;
 
 #[cfg(test)]
 mod tests;

@@ -1,7 +1,7 @@
 //! The one way to put rows on a sheet: each row below the last, each cell right of the last. So a sheet can be
 //! streamed, where a cell written backwards would be lost without a word.
 
-use rust_xlsxwriter::{Format, IgnoreError, Worksheet};
+use rust_xlsxwriter::{Format, Formula, IgnoreError, Worksheet};
 
 use super::WriteError;
 use super::column::{Cell, Column, Head, Kind};
@@ -119,6 +119,21 @@ impl<'w> RowSink<'w> {
             }
             (Cell::Text(text), Some(format)) if !text.is_empty() => {
                 self.worksheet.write_string_with_format(row, index, text::for_cell(&text), format)?
+            }
+            (Cell::Formula(formula, result), format) => {
+                let result = match *result {
+                    Cell::Number(number) if number.is_finite() => number.to_string(),
+                    Cell::Text(text) => text.into_owned(),
+                    _ => {
+                        let place = format!("sheet {} row {}, {}", self.sheet, row + 1, column.title);
+                        return Err(WriteError::NotFinite { place });
+                    }
+                };
+                let formula = Formula::new(formula).set_result(result);
+                match format {
+                    Some(format) => self.worksheet.write_formula_with_format(row, index, formula, format)?,
+                    None => self.worksheet.write_formula(row, index, formula)?,
+                }
             }
             (Cell::Text(_) | Cell::Blank, None) => return Ok(()),
             (Cell::Text(_) | Cell::Blank, Some(format)) => self.worksheet.write_blank(row, index, format)?,

@@ -43,6 +43,7 @@ fn field(cell: Cell<'_>) -> String {
         Cell::Blank => String::new(),
         Cell::Number(number) => number.to_string(),
         Cell::Text(text) => harmless(&text),
+        Cell::Formula(_, result) => field(*result),
     }
 }
 

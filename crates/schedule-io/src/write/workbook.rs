@@ -5,7 +5,7 @@ use rust_xlsxwriter::{Workbook, Worksheet, XlsxError};
 use super::column::{Column, ColumnDescription};
 use super::{
     Submission, WriteError, beam_loads, bending_schedule, changes, checks, corners, cover, drawing_notes,
-    edges, look, openings, panels, quantities, queries, register, supports, title_block,
+    edges, look, openings, panels, quantities, queries, register, supports, title_block, working,
 };
 
 /// How a sheet is kept until the file is saved.
@@ -21,7 +21,7 @@ pub(super) enum Keeping {
 type WriteSheet = fn(&Submission<'_>, &mut Worksheet) -> Result<(), WriteError>;
 
 /// The sheets in order.
-const SHEETS: [WriteSheet; 14] = [
+const SHEETS: [WriteSheet; 15] = [
     cover::write,
     panels::write,
     supports::write,
@@ -33,6 +33,7 @@ const SHEETS: [WriteSheet; 14] = [
     bending_schedule::write,
     drawing_notes::write,
     quantities::write,
+    working::write,
     changes::write,
     queries::write,
     register::write,
@@ -92,6 +93,11 @@ pub fn describe_sheets() -> Vec<SheetDescription> {
         described(bending_schedule::NAME, "a bar mark", &bending_schedule::columns()),
         described(drawing_notes::NAME, "a line for the plan", &drawing_notes::columns()),
         described(quantities::NAME, "a quantity", &quantities::columns()),
+        SheetDescription {
+            name: working::NAME,
+            row: "a section of a panel",
+            columns: working::descriptions(),
+        },
         described(changes::NAME, "a change against the previous issue", &changes::columns()),
         described(queries::NAME, "a query", &queries::columns()),
         described(register::NAME, "an issue, a mark, or a panel's inputs", &register::columns()),
